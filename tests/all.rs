@@ -1,0 +1,2 @@
+//! The one integration test binary.
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::indexing_slicing)]
