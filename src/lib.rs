@@ -3,6 +3,7 @@
 //! The modules stand in the order of the flow; each may use what stands to its left and nothing to its right.
 
 pub mod diagnostic;
+pub mod figure;
 pub mod member;
 pub mod number;
 pub mod quantity;
