@@ -7,4 +7,5 @@ pub mod figure;
 pub mod member;
 pub mod number;
 pub mod quantity;
+pub mod sheet;
 pub mod working;
