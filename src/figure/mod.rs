@@ -1,7 +1,25 @@
 //! Drawings as placed primitives in millimetres; pure, measured in the embedded font, tested for collisions.
 
+mod band;
+mod canvas;
+mod chain;
+mod collide;
+mod elevation;
 mod hatch;
+mod label;
+mod measure;
 pub mod primitive;
+mod rows;
+mod support;
+mod words;
 
+pub use collide::{Collision, CollisionKind};
+pub use elevation::elevation;
 pub use hatch::hatch_lines;
 pub use primitive::{Anchor, Dash, Drawing, Fill, Item, Point, Run, Stroke};
+pub use words::{Cut, Words};
+
+/// Width of the text column, mm.
+pub const COLUMN: f64 = 120.0;
+/// Width of the text column and the side notes together, mm.
+pub const WIDE: f64 = 155.0;

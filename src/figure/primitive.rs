@@ -184,6 +184,8 @@ pub enum Item {
         size_pt: f64,
         /// Width as measured in the embedded font, mm.
         width: f64,
+        /// Turned a quarter counter-clockwise about its place, so that it reads from below upwards.
+        turned: bool,
         /// What it says.
         runs: Vec<Run>,
     },

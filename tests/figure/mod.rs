@@ -1,0 +1,25 @@
+//! Drawings: no label on a line or on another label, on fixed, crowded and random members.
+
+mod build;
+mod svg;
+
+use proofspan::figure::{self, COLUMN, Cut, Drawing, Words};
+use svg::show;
+
+/// Shows the drawing where asked, and fails with every collision.
+fn clean(name: &str, drawing: &Drawing) {
+    show(name, drawing);
+    let found = drawing.collisions();
+    assert!(found.is_empty(), "{name}: {found:#?}");
+    assert!(!drawing.alt.is_empty() && drawing.height > 1.0, "{name}");
+}
+
+fn said() -> Words {
+    Words { cuts: vec![Cut { at: 4.0, name: "C".to_owned() }], ..Words::default() }
+}
+
+#[test]
+fn elevations_are_clean() {
+    clean("elevation-propped", &figure::elevation(&build::propped(), &said(), COLUMN));
+    clean("elevation-crowded", &figure::elevation(&build::crowded(), &Words::default(), COLUMN));
+}
