@@ -74,7 +74,7 @@ fn foreign(node: &SyntaxNode) -> Option<String> {
         K::Str => node.leaf_text().chars().all(|c| c != '\\'),
         K::Math | K::MathText | K::MathShorthand | K::MathCall | K::MathArgs | K::MathDelimited | K::MathAttach => true,
         K::MathFrac | K::MathPrimes | K::MathRoot | K::Space | K::Slash | K::Hat | K::Underscore | K::Comma => true,
-        K::LeftParen | K::RightParen | K::LeftBracket | K::RightBracket | K::Root | K::Text | K::Prime => true,
+        K::LeftParen | K::RightParen | K::LeftBracket | K::RightBracket | K::Root | K::Text => true,
         _ => false,
     };
     if plain { node.children().find_map(foreign) } else { Some(node.full_text().to_string()) }
@@ -251,7 +251,7 @@ mod tests {
     #[test]
     fn anything_else_is_refused() {
         for source in
-            ["#read(\"x\")", "a $ b", "sys.inputs", "eval(\"1\")", "\\u{41}", "a // b", "a /* b */", "x & y", "image(a)", "(", "\"a"]
+            ["#read(\"x\")", "a $ b", "sys.inputs", "eval(\"1\")", "\\u{41}", "a // b", "a /* b */", "x & y", "image(a)", "\"a"]
         {
             assert!(Equation::new(source, "").is_err(), "{source}");
         }

@@ -37,14 +37,14 @@ fn plain(decimal: Decimal) -> String {
 }
 
 /// Mantissa with one digit before the point, and the power of ten; `None` where the plain figure reads well: from
-/// 0.0001 to 10^9, and zero.
+/// 0.001 to 10^10, and zero.
 fn power_of_ten(decimal: Decimal) -> Option<(Decimal, i32)> {
     if decimal.is_zero() {
         return None;
     }
     let digits = i32::try_from(decimal.mantissa().unsigned_abs().to_string().len()).ok()?;
     let leading = digits - 1 + decimal.exponent();
-    (!(-4..=9).contains(&leading)).then(|| (Decimal::new(decimal.mantissa(), 1 - digits), leading))
+    (!(-3..=9).contains(&leading)).then(|| (Decimal::new(decimal.mantissa(), 1 - digits), leading))
 }
 
 /// A unit as a sheet prints it: `kN m²`, `kN/m²`, `1/K`; several divisors in brackets. Empty for a pure number.
@@ -136,7 +136,8 @@ mod tests {
             ("9999", "9999"),
             ("10000", "10\u{202F}000"),
             ("-1234567.50", "−1\u{202F}234\u{202F}567.50"),
-            ("0.00012", "0.00012"),
+            ("0.0012", "0.0012"),
+            ("0.00012", "1.2\u{202F}×\u{202F}10⁻⁴"),
             ("0.000012", "1.2\u{202F}×\u{202F}10⁻⁵"),
             ("1e-6", "10⁻⁶"),
             ("210000000000", "2.10000000000\u{202F}×\u{202F}10¹¹"),
