@@ -46,7 +46,7 @@ pub fn prose(text: &str) -> String {
     while let Some(first) = rest.chars().next() {
         if let (false, Some((base, sub, after))) = (in_word(before), symbol(rest)) {
             if !plain.is_empty() {
-                parts.push(literal(&std::mem::take(&mut plain)));
+                held(&std::mem::take(&mut plain), &mut parts);
             }
             parts.push(format!("emph({})", literal(base)));
             if !sub.is_empty() {
@@ -61,11 +61,36 @@ pub fn prose(text: &str) -> String {
         rest = rest.get(first.len_utf8()..).unwrap_or_default();
     }
     if !plain.is_empty() || parts.is_empty() {
-        parts.push(literal(&plain));
+        held(&plain, &mut parts);
     }
     match parts.as_slice() {
         [one] => one.clone(),
         several => format!("{{{}}}", several.join(";")),
+    }
+}
+
+/// Plain text; a word that joins two names by a dash (`A–B`) is kept on one line.
+fn held(text: &str, parts: &mut Vec<String>) {
+    let joined = |word: &str| word.trim_matches(|c: char| !c.is_alphanumeric()).contains('–');
+    if !text.split(' ').any(joined) {
+        return parts.push(literal(text));
+    }
+    let mut plain = String::new();
+    for (index, word) in text.split(' ').enumerate() {
+        if index > 0 {
+            plain.push(' ');
+        }
+        if joined(word) {
+            if !plain.is_empty() {
+                parts.push(literal(&std::mem::take(&mut plain)));
+            }
+            parts.push(format!("box({})", literal(word)));
+        } else {
+            plain.push_str(word);
+        }
+    }
+    if !plain.is_empty() {
+        parts.push(literal(&plain));
     }
 }
 

@@ -276,6 +276,7 @@ fn tabulated(steps: &[&working::Step]) -> Result<(String, Option<Table>), NotMat
         row.bold = step.bold;
         table.rows.push(row);
     }
+    table.middle = table.rows.iter().flat_map(|row| &row.cells).any(|cell| matches!(cell, Cell::Equation { .. }));
     table.spread();
     if let Some(last) = table.columns.last_mut() {
         last.align = Align::Right;

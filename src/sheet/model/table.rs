@@ -15,6 +15,8 @@ pub struct Table {
     pub title: String,
     /// What it holds, for those who do not see it.
     pub alt: String,
+    /// Whether cells stand at the middle of their row, for rows of equations, rather than at its top.
+    pub middle: bool,
     /// Columns, left to right.
     pub columns: Vec<Column>,
     /// Rows.
@@ -159,7 +161,7 @@ impl Row {
 impl Table {
     /// A table without rows yet.
     pub fn new(title: impl Into<String>, alt: impl Into<String>, columns: Vec<Column>) -> Self {
-        Self { title: title.into(), alt: alt.into(), columns, rows: Vec::new() }
+        Self { title: title.into(), alt: alt.into(), middle: false, columns, rows: Vec::new() }
     }
 
     /// Gives the width that is left to the columns alike, where all of them have a width of their own.
