@@ -17,12 +17,3 @@ fn the_sample_prints_without_a_warning() {
     assert!(printed.pages > 8, "{}", printed.pages);
 }
 
-#[test]
-fn zz_time() {
-    let m = sample::model();
-    for _ in 0..6 {
-        let t = std::time::Instant::now();
-        let p = print(&m, &sample::options()).unwrap();
-        eprintln!("TIME {:?} pages {}", t.elapsed(), p.pages);
-    }
-}
