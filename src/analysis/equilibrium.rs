@@ -120,3 +120,8 @@ pub fn allowable<N: Number>(length: N, ratio: N) -> N {
 pub fn utilisation<N: Number>(found: N, allowed: N) -> N {
     found.magnitude() / allowed
 }
+
+/// Moment of a uniform load `w` over the length `c` that begins at the point itself: w c² / 2.
+pub fn uniform_from_end<N: Number>(w: N, c: N) -> N {
+    w * c.power(2) / n::<N>(2)
+}
