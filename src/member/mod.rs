@@ -15,7 +15,7 @@ use std::collections::BTreeMap;
 use crate::diagnostic::Diagnostic;
 use crate::quantity::{
     Area, Density, Expansion, Given, Intensity, Length, LinearMass, RotationalStiffness, SecondMoment, SpecificWeight,
-    Stress,
+    Stress, Typed,
 };
 
 /// A member with everything that acts on it and everything that is asked of it.

@@ -234,7 +234,14 @@ impl Builder {
     }
 
     /// A chosen exact figure: a unit load, a factor, a tabulated constant.
-    pub fn choose(&mut self, title: impl Into<String>, symbol: Symbol, figure: Decimal, unit: Unit, value: f64) -> Traced {
+    pub fn choose(
+        &mut self,
+        title: impl Into<String>,
+        symbol: Symbol,
+        figure: Decimal,
+        unit: Unit,
+        value: f64,
+    ) -> Traced {
         self.push(Draft {
             title: title.into(),
             symbol,
@@ -295,11 +302,8 @@ impl Builder {
             let close = (replay.found - replay.expected).abs() <= 1e-12 * scale;
             !close
         };
-        let mismatch = |replay: &Replay| Mismatch {
-            title: replay.title.clone(),
-            expected: replay.expected,
-            found: replay.found,
-        };
+        let mismatch =
+            |replay: &Replay| Mismatch { title: replay.title.clone(), expected: replay.expected, found: replay.found };
         self.replays.iter().filter(differs).map(mismatch).collect()
     }
 
@@ -316,8 +320,16 @@ impl Builder {
             sum = sum + if term.unit == *to { figure } else { figure * self.factor(&term.unit, to) };
         }
         let title = title.into();
-        let finding =
-            Finding { title, symbol, what: What::Other, unit: to.clone(), value: si, basis: "", bold: false, last: false };
+        let finding = Finding {
+            title,
+            symbol,
+            what: What::Other,
+            unit: to.clone(),
+            value: si,
+            basis: "",
+            bold: false,
+            last: false,
+        };
         self.state(finding, Some(sum))
     }
 
@@ -328,7 +340,10 @@ impl Builder {
         let source = Traced::var(Source::Deck(self.figures.len() - 1));
         let unit = Unit::none();
         let title = title.into();
-        self.state(Finding { title, symbol, what: What::Other, unit, value, basis: "", bold: false, last: false }, Some(source))
+        self.state(
+            Finding { title, symbol, what: What::Other, unit, value, basis: "", bold: false, last: false },
+            Some(source),
+        )
     }
 
     /// The factor that turns a figure in one unit into one in another, written once.

@@ -24,7 +24,8 @@ const MOST: u32 = 12;
 impl Builder {
     /// Prints the drafts.
     pub fn finish(self) -> Working {
-        let order: Vec<usize> = self.chapters.iter().flat_map(|c| &c.blocks).flat_map(|b| b.steps.iter().copied()).collect();
+        let order: Vec<usize> =
+            self.chapters.iter().flat_map(|c| &c.blocks).flat_map(|b| b.steps.iter().copied()).collect();
         let greatest = self.greatest();
         let mut figures = FEWEST;
         let mut printed = self.evaluate(figures, &order, &greatest);
@@ -106,7 +107,8 @@ impl Builder {
         let mut places = vec![0; self.drafts.len()];
         let mut steps: Vec<Step> = Vec::with_capacity(self.drafts.len());
         let mut chapters = Vec::new();
-        for chapter in self.chapters.iter().filter(|chapter| chapter.blocks.iter().any(|block| !block.steps.is_empty())) {
+        for chapter in self.chapters.iter().filter(|chapter| chapter.blocks.iter().any(|block| !block.steps.is_empty()))
+        {
             let number = chapters.len() + 1;
             let mut blocks = Vec::new();
             for block in chapter.blocks.iter().filter(|block| !block.steps.is_empty()) {
@@ -154,7 +156,8 @@ impl Builder {
         places: &[usize],
     ) -> Step {
         let names = name::Naming::new(self, draft, printed);
-        let inputs = names.sources().iter().map(|source| {
+        let sources = names.sources();
+        let inputs = sources.iter().map(|source| {
             let (printed, unit, from) = match *source {
                 Source::Deck(index) => {
                     let figure = self.figures.get(index);
@@ -180,11 +183,7 @@ impl Builder {
             math_symbol: name::typeset(&draft.symbol, ""),
             spoken: names.spoken(figure.unwrap_or(Decimal::ZERO)),
             inputs: inputs.collect(),
-            result: Figure {
-                printed: figure.unwrap_or(Decimal::ZERO),
-                unit: draft.unit.clone(),
-                value: draft.value,
-            },
+            result: Figure { printed: figure.unwrap_or(Decimal::ZERO), unit: draft.unit.clone(), value: draft.value },
             basis: draft.basis.to_owned(),
             bold: draft.bold,
         }

@@ -99,7 +99,11 @@ impl<'a> Naming<'a> {
                 Source::Step(index) => match builder.drafts.get(index) {
                     Some(input) => {
                         let same = input.tag == draft.tag;
-                        (&input.symbol, if same { "" } else { input.tag.as_str() }, printed.get(index).copied().flatten())
+                        (
+                            &input.symbol,
+                            if same { "" } else { input.tag.as_str() },
+                            printed.get(index).copied().flatten(),
+                        )
                     }
                     None => continue,
                 },

@@ -99,7 +99,12 @@ impl Traced {
             }
             Node::Whole(_) => {}
             Node::Neg(a) | Node::Power(a, _) | Node::Abs(a) => a.collect(list),
-            Node::Add(a, b) | Node::Sub(a, b) | Node::Mul(a, b) | Node::Div(a, b) | Node::Min(a, b) | Node::Max(a, b) => {
+            Node::Add(a, b)
+            | Node::Sub(a, b)
+            | Node::Mul(a, b)
+            | Node::Div(a, b)
+            | Node::Min(a, b)
+            | Node::Max(a, b) => {
                 a.collect(list);
                 b.collect(list);
             }

@@ -2,12 +2,12 @@
 
 use super::given::LoadBook;
 use super::{Finding, Narrator, finding};
+use crate::analysis::Cut;
 use crate::analysis::action::{Acting, Action};
 use crate::analysis::cantilever as tip;
 use crate::analysis::equilibrium as sums;
-use crate::analysis::stiffness::linear_between;
 use crate::analysis::model::Piece;
-use crate::analysis::Cut;
+use crate::analysis::stiffness::linear_between;
 use crate::member::{LoadKind, Place, Stretch};
 use crate::working::draft::Symbol;
 use crate::working::trace::Traced;
@@ -81,9 +81,11 @@ impl Act {
                 shear(&|ga| tip::shear_force_v(first.clone(), a.clone(), ga)),
                 tip::force_psi(first.clone(), a.clone(), ei),
             ],
-            Action::Couple { .. } if self.whole => {
-                [tip::tip_couple_v(first.clone(), l.clone(), ei.clone()), Traced::zero(), tip::tip_couple_psi(first, l, ei)]
-            }
+            Action::Couple { .. } if self.whole => [
+                tip::tip_couple_v(first.clone(), l.clone(), ei.clone()),
+                Traced::zero(),
+                tip::tip_couple_psi(first, l, ei),
+            ],
             Action::Couple { .. } => {
                 [tip::couple_v(first.clone(), a.clone(), l, ei.clone()), Traced::zero(), tip::couple_psi(first, a, ei)]
             }
@@ -107,9 +109,11 @@ impl Act {
                 shear(&|ga| tip::shear_linear_v(first.clone(), second.clone(), a.clone(), c.clone(), ga)),
                 tip::linear_part_psi(first.clone(), second.clone(), a.clone(), c.clone(), ei),
             ],
-            Action::Gradient { .. } => {
-                [tip::curvature_v(first.clone(), a.clone(), b.clone(), l), Traced::zero(), tip::curvature_psi(first, a, b)]
-            }
+            Action::Gradient { .. } => [
+                tip::curvature_v(first.clone(), a.clone(), b.clone(), l),
+                Traced::zero(),
+                tip::curvature_psi(first, a, b),
+            ],
         }
     }
 
@@ -156,8 +160,11 @@ impl Narrator<'_> {
     /// The part of a stretch on a piece, and the figures of its ends and length.
     fn part(&mut self, piece: &Piece, over: Stretch) -> (Stretch, [Traced; 3], bool) {
         let part = Stretch { from: over.from.max(piece.from), to: over.to.min(piece.to) };
-        let figures =
-            [self.distance(piece.from, part.from), self.distance(part.from, part.to), self.distance(piece.from, part.to)];
+        let figures = [
+            self.distance(piece.from, part.from),
+            self.distance(part.from, part.to),
+            self.distance(piece.from, part.to),
+        ];
         (part, figures, part.from == piece.from && part.to == piece.to)
     }
 
@@ -208,12 +215,22 @@ impl Narrator<'_> {
         let none = crate::quantity::Unit::none();
         let slot = self.book.derived;
         let first = if segment.taper.is_some() {
-            let what = finding("strain, top less bottom", Symbol::new("epsilon", self.place_name(piece.to)), (What::Other, none), value);
+            let what = finding(
+                "strain, top less bottom",
+                Symbol::new("epsilon", self.place_name(piece.to)),
+                (What::Other, none),
+                value,
+            );
             self.builder.aside(slot, |builder| builder.find(what, strain))
         } else {
             let depth = self.member.sections.get(segment.section)?.depth.as_ref()?.value.si();
             let unit = self.builder.base.coherent(0, -1);
-            let what = finding("curvature by temperature", Symbol::new("kappa", self.place_name(piece.to)), (What::Other, unit), value / depth);
+            let what = finding(
+                "curvature by temperature",
+                Symbol::new("kappa", self.place_name(piece.to)),
+                (What::Other, unit),
+                value / depth,
+            );
             let expression = strain / book.depth?;
             self.builder.aside(slot, |builder| builder.find(what, expression))
         };
@@ -221,7 +238,14 @@ impl Narrator<'_> {
     }
 
     /// Shear and moment at the near end of a length, from those at its far end and what acts between.
-    pub fn near_end(&mut self, far: &(Traced, Traced), l: &Traced, acts: &[Act], found: [Finding; 2], always: bool) -> (Traced, Traced) {
+    pub fn near_end(
+        &mut self,
+        far: &(Traced, Traced),
+        l: &Traced,
+        acts: &[Act],
+        found: [Finding; 2],
+        always: bool,
+    ) -> (Traced, Traced) {
         let [shear, moment] = found;
         let mut forces = vec![far.0.clone()];
         let mut moments = vec![far.1.clone(), -(far.0.clone() * l.clone())];
@@ -233,7 +257,14 @@ impl Narrator<'_> {
     }
 
     /// Deflection and turn of the tip of a length of constant rigidity: by the cut at its tip and what acts on it.
-    pub fn own_bending(&mut self, piece: &Piece, l: &Traced, cut: &(Traced, Traced), acts: &[Act], found: [Finding; 2]) -> Option<(Traced, Traced)> {
+    pub fn own_bending(
+        &mut self,
+        piece: &Piece,
+        l: &Traced,
+        cut: &(Traced, Traced),
+        acts: &[Act],
+        found: [Finding; 2],
+    ) -> Option<(Traced, Traced)> {
         let segment = self.member.segments.get(piece.segment)?;
         let book = self.book.sections.get(segment.section)?.clone();
         let mut vs = vec![
@@ -311,7 +342,8 @@ impl Narrator<'_> {
     pub fn length_beyond(&mut self, far: &Traced, near: &Traced, value: f64) -> Traced {
         let unit = self.builder.base.coherent(0, 1);
         let count = self.builder.drafts.len();
-        let what = finding("difference of distances", Symbol::new("d", format!("x{count}")), (What::Other, unit), value);
+        let what =
+            finding("difference of distances", Symbol::new("d", format!("x{count}")), (What::Other, unit), value);
         self.builder.find(what, far.clone() - near.clone())
     }
 

@@ -27,7 +27,8 @@ impl Narrator<'_> {
     /// Short name of a redundant in subscripts: the support, with the letter where both are released there.
     pub fn release(&self, redundant: Redundant) -> String {
         let name = self.support_name(redundant.support());
-        let both = self.analysis.model.redundants.iter().filter(|other| other.support() == redundant.support()).count() > 1;
+        let both =
+            self.analysis.model.redundants.iter().filter(|other| other.support() == redundant.support()).count() > 1;
         match (both, redundant) {
             (false, _) => name,
             (true, Redundant::Force(_)) => format!("R{name}"),
@@ -114,7 +115,8 @@ impl Narrator<'_> {
             let value = self.builder.value(&sums::determinant(at(0, 0), at(0, 1), at(1, 0), at(1, 1)));
             let unit = product(&self.entry_unit(&redundants, 0, 0), &self.entry_unit(&redundants, 1, 1));
             self.builder.block("Two equations: Cramer's rule, whose determinant is");
-            let what = finding("determinant of the flexibilities", Symbol::new("D", ""), (What::Other, unit), value).bold();
+            let what =
+                finding("determinant of the flexibilities", Symbol::new("D", ""), (What::Other, unit), value).bold();
             self.builder.state(what, Some(sums::determinant(at(0, 0), at(0, 1), at(1, 0), at(1, 1))))
         });
         let upper = if redundants.len() > 2 { self.eliminate(&entries) } else { Vec::new() };
@@ -181,7 +183,12 @@ impl Narrator<'_> {
                 }
                 let (row, column) = (self.named(&redundants, i), self.named(&redundants, j));
                 let unit = self.entry_unit(&redundants, i, j);
-                let what = finding(format!("entry {row}{column} after elimination"), Symbol::new("u", format!("{row}{column}")), (What::Other, unit), eliminated.get(i, j));
+                let what = finding(
+                    format!("entry {row}{column} after elimination"),
+                    Symbol::new("u", format!("{row}{column}")),
+                    (What::Other, unit),
+                    eliminated.get(i, j),
+                );
                 let step = self.builder.find(what, expression);
                 if let Some(slot) = upper.get_mut(i).and_then(|row| row.get_mut(j)) {
                     *slot = step;
@@ -240,7 +247,13 @@ impl Narrator<'_> {
         list
     }
 
-    fn compatibility(&mut self, case: usize, released: &Told, imposed: &[Pair], flexibility: &Flexibilities) -> Vec<Traced> {
+    fn compatibility(
+        &mut self,
+        case: usize,
+        released: &Told,
+        imposed: &[Pair],
+        flexibility: &Flexibilities,
+    ) -> Vec<Traced> {
         let redundants = self.analysis.model.redundants.clone();
         let Some(solution) = self.analysis.cases.get(case) else { return Vec::new() };
         if redundants.is_empty() {
@@ -260,17 +273,31 @@ impl Narrator<'_> {
                 Redundant::Moment(_) => -at.1,
             };
             let units = if matches!(redundant, Redundant::Force(_)) { scale.v.clone() } else { scale.psi.clone() };
-            let what = finding(format!("movement to be closed at the release of {name}"), Symbol::new("g", name), units, *value)
-                .basis("movement imposed less movement of the released member");
+            let what = finding(
+                format!("movement to be closed at the release of {name}"),
+                Symbol::new("g", name),
+                units,
+                *value,
+            )
+            .basis("movement imposed less movement of the released member");
             let expression = wanted - self.movement(released, *redundant);
             gaps.push(self.builder.find(what, expression));
         }
         let solved = self.solve(&redundants, &gaps, flexibility, &solution.redundants, &solution.reduced);
-        self.builder.block("Reactions and inner forces of the member: released member plus redundants times their unit states.");
+        self.builder.block(
+            "Reactions and inner forces of the member: released member plus redundants times their unit states.",
+        );
         solved
     }
 
-    fn solve(&mut self, redundants: &[Redundant], gaps: &[Traced], flexibility: &Flexibilities, values: &[f64], reduced: &[f64]) -> Vec<Traced> {
+    fn solve(
+        &mut self,
+        redundants: &[Redundant],
+        gaps: &[Traced],
+        flexibility: &Flexibilities,
+        values: &[f64],
+        reduced: &[f64],
+    ) -> Vec<Traced> {
         let f = |i: usize, j: usize| {
             flexibility.entries.get(i).and_then(|row| row.get(j)).cloned().unwrap_or_else(Traced::zero)
         };
@@ -295,7 +322,14 @@ impl Narrator<'_> {
         self.builder.state(what.bold().last().basis("compatibility"), Some(expression))
     }
 
-    fn substitute(&mut self, redundants: &[Redundant], gaps: &[Traced], flexibility: &Flexibilities, values: &[f64], reduced: &[f64]) -> Vec<Traced> {
+    fn substitute(
+        &mut self,
+        redundants: &[Redundant],
+        gaps: &[Traced],
+        flexibility: &Flexibilities,
+        values: &[f64],
+        reduced: &[f64],
+    ) -> Vec<Traced> {
         let count = gaps.len();
         let u = |i: usize, j: usize| {
             flexibility.upper.get(i).and_then(|row| row.get(j)).cloned().unwrap_or_else(Traced::zero)
@@ -308,7 +342,12 @@ impl Narrator<'_> {
             let name = self.named(redundants, j);
             let force = redundants.get(j).is_some_and(|redundant| matches!(redundant, Redundant::Force(_)));
             let units = if force { scale.v.clone() } else { scale.psi.clone() };
-            let what = finding(format!("right-hand side {name} after elimination"), Symbol::new("y", name), units, reduced.get(j).copied().unwrap_or_default());
+            let what = finding(
+                format!("right-hand side {name} after elimination"),
+                Symbol::new("y", name),
+                units,
+                reduced.get(j).copied().unwrap_or_default(),
+            );
             let step = self.builder.find(what, sums::eliminated(gap.clone(), rows));
             y.push(step);
         }

@@ -3,9 +3,9 @@
 use std::collections::BTreeMap;
 
 use super::{Narrator, finding};
-use crate::analysis::stiffness::{rigidity, shear};
 use crate::analysis::action::weight_per_length;
 use crate::analysis::equilibrium as sums;
+use crate::analysis::stiffness::{rigidity, shear};
 use crate::member::{Hold, LoadKind, Member, Place, Section, Weight};
 use crate::quantity::{GRAVITY, Typed};
 use crate::working::draft::{Slot, Symbol};
@@ -32,6 +32,9 @@ pub struct Book {
     pub scale: Option<super::Scale>,
     /// Constants of quadratures and tapers, by what they are.
     pub constants: BTreeMap<Symbol, Traced>,
+    /// Loads of the combination whose places are being worked out, by piece.
+    pub combined: Vec<Vec<super::acts::Act>>,
+    worked: usize,
     places: BTreeMap<Place, Traced>,
     distances: BTreeMap<(Place, Place), Traced>,
     /// Where places and distances are written.
@@ -66,6 +69,14 @@ pub enum LoadBook {
     Single(Traced),
 }
 
+impl Book {
+    /// A subscript for the next place that is worked out.
+    pub fn next_place(&mut self) -> String {
+        self.worked += 1;
+        self.worked.to_string()
+    }
+}
+
 impl Narrator<'_> {
     /// Writes the chapter of given figures.
     pub fn given(&mut self) {
@@ -88,9 +99,15 @@ impl Narrator<'_> {
     }
 
     fn name_places(&mut self) {
-        let taken: Vec<&str> = self.member.supports.iter().map(|support| support.name.as_str())
-            .chain(self.member.hinges.iter().map(|hinge| hinge.name.as_str())).collect();
-        let mut letters = ('C'..='Z').map(|letter| letter.to_string())
+        let taken: Vec<&str> = self
+            .member
+            .supports
+            .iter()
+            .map(|support| support.name.as_str())
+            .chain(self.member.hinges.iter().map(|hinge| hinge.name.as_str()))
+            .collect();
+        let mut letters = ('C'..='Z')
+            .map(|letter| letter.to_string())
             .chain((1..).map(|count| format!("c{count}")))
             .filter(|name| !taken.iter().any(|known| known.eq_ignore_ascii_case(name)));
         let mut names: BTreeMap<Place, String> = BTreeMap::new();
@@ -167,9 +184,8 @@ impl Narrator<'_> {
             (Some(from), Some(to)) if !near.is_zero() => Symbol::new("L", format!("{from}{to}")),
             _ => Symbol::new("d", (self.book.distances.len() + 1).to_string()),
         };
-        let describe = |place: Place| {
-            self.book.names.get(&place).cloned().unwrap_or_else(|| format!("x = {} m", place.exact()))
-        };
+        let describe =
+            |place: Place| self.book.names.get(&place).cloned().unwrap_or_else(|| format!("x = {} m", place.exact()));
         let title = format!("distance from {} to {}", describe(from), describe(to));
         let unit = self.builder.base.coherent(0, 1);
         let what = finding(title, symbol, (What::Other, unit), to.beyond(from));
@@ -184,7 +200,10 @@ impl Narrator<'_> {
         let warmed = has(self.member, |kind| matches!(kind, LoadKind::Gradient { .. }));
         let used: Vec<bool> = (0..self.member.sections.len())
             .map(|index| {
-                self.member.segments.iter().any(|s| s.section == index || s.taper.is_some_and(|taper| taper.to == index))
+                self.member
+                    .segments
+                    .iter()
+                    .any(|s| s.section == index || s.taper.is_some_and(|taper| taper.to == index))
             })
             .collect();
         for (section, used) in self.member.sections.iter().zip(used) {
@@ -202,23 +221,60 @@ impl Narrator<'_> {
         let base = self.builder.base.clone();
         let of = |letter: &'static str| Symbol::new(letter, name.clone());
         let stress = base.coherent(1, -2);
-        let e = self.builder.given(format!("modulus of {name}"), of("E"), &section.modulus.typed, &stress, section.modulus.value.si());
+        let e = self.builder.given(
+            format!("modulus of {name}"),
+            of("E"),
+            &section.modulus.typed,
+            &stress,
+            section.modulus.value.si(),
+        );
         let inertia = &section.second_moment;
-        let i = self.builder.given(format!("second moment of area of {name}"), of("I"), &inertia.typed, &base.coherent(0, 4), inertia.value.si());
-        let what = finding(format!("rigidity of {name}"), of("EI"), (What::Other, base.coherent(1, 2)), rigidity(section)).bold();
+        let i = self.builder.given(
+            format!("second moment of area of {name}"),
+            of("I"),
+            &inertia.typed,
+            &base.coherent(0, 4),
+            inertia.value.si(),
+        );
+        let what =
+            finding(format!("rigidity of {name}"), of("EI"), (What::Other, base.coherent(1, 2)), rigidity(section))
+                .bold();
         let ei = self.builder.state(what, Some(e * i));
         let ga = section.shear.as_ref().map(|(g, area)| {
             let g = self.builder.given(format!("shear modulus of {name}"), of("G"), &g.typed, &stress, g.value.si());
-            let a = self.builder.given(format!("shear area of {name}"), of("As"), &area.typed, &base.coherent(0, 2), area.value.si());
-            let what = finding(format!("shear rigidity of {name}"), of("GA"), (What::Other, base.coherent(1, 0)), shear(section).unwrap_or_default());
+            let a = self.builder.given(
+                format!("shear area of {name}"),
+                of("As"),
+                &area.typed,
+                &base.coherent(0, 2),
+                area.value.si(),
+            );
+            let what = finding(
+                format!("shear rigidity of {name}"),
+                of("GA"),
+                (What::Other, base.coherent(1, 0)),
+                shear(section).unwrap_or_default(),
+            );
             self.builder.state(what.bold(), Some(g * a))
         });
         let weight = if weighed { self.weight(section) } else { None };
         let depth = section.depth.as_ref().filter(|_| warmed).map(|depth| {
-            self.builder.given(format!("depth of {name}"), of("h"), &depth.typed, &base.coherent(0, 1), depth.value.si())
+            self.builder.given(
+                format!("depth of {name}"),
+                of("h"),
+                &depth.typed,
+                &base.coherent(0, 1),
+                depth.value.si(),
+            )
         });
         let expansion = section.expansion.as_ref().filter(|_| warmed).map(|alpha| {
-            self.builder.given(format!("expansion of {name}"), of("alpha"), &alpha.typed, &base.expansion(), alpha.value.si())
+            self.builder.given(
+                format!("expansion of {name}"),
+                of("alpha"),
+                &alpha.typed,
+                &base.expansion(),
+                alpha.value.si(),
+            )
         });
         SectionBook { ei, ga, weight, depth, expansion }
     }
@@ -238,20 +294,38 @@ impl Narrator<'_> {
                 Some(self.builder.given(format!("weight of {name}"), of("g"), &w.typed, &per_length.1, w.value.si()))
             }
             Weight::MassPerLength(mass) => {
-                let m = self.builder.given(format!("mass of {name}"), of("m"), &mass.typed, &base.linear_mass(), mass.value.si());
+                let m = self.builder.given(
+                    format!("mass of {name}"),
+                    of("m"),
+                    &mass.typed,
+                    &base.linear_mass(),
+                    mass.value.si(),
+                );
                 let gravity = self.gravity();
                 Some(self.builder.state(what, Some(m * gravity)))
             }
             Weight::Mass(a, density) => {
                 let a = area(self, a);
-                let rho = self.builder.given(format!("density of {name}"), of("rho"), &density.typed, &base.density(), density.value.si());
+                let rho = self.builder.given(
+                    format!("density of {name}"),
+                    of("rho"),
+                    &density.typed,
+                    &base.density(),
+                    density.value.si(),
+                );
                 let gravity = self.gravity();
                 Some(self.builder.state(what, Some(a * rho * gravity)))
             }
             Weight::Specific(a, weight) => {
                 let a = area(self, a);
                 let unit = base.coherent(1, -3);
-                let gamma = self.builder.given(format!("specific weight of {name}"), of("rho"), &weight.typed, &unit, weight.value.si());
+                let gamma = self.builder.given(
+                    format!("specific weight of {name}"),
+                    of("rho"),
+                    &weight.typed,
+                    &unit,
+                    weight.value.si(),
+                );
                 Some(self.builder.state(what, Some(a * gamma)))
             }
         }
@@ -264,7 +338,8 @@ impl Narrator<'_> {
         let value = GRAVITY.to_f64();
         let term = newton.terms.first().cloned();
         let Some(term) = term else { return Traced::zero() };
-        let standard = self.builder.choose("standard gravity", Symbol::new("g", "n"), term.figure, term.unit.clone(), value);
+        let standard =
+            self.builder.choose("standard gravity", Symbol::new("g", "n"), term.figure, term.unit.clone(), value);
         let factor = self.builder.factor(&term.unit, &to);
         let what = finding("standard gravity in working units", Symbol::new("g", "w"), (What::Other, to), value);
         self.builder.find(what, standard * factor)
@@ -275,11 +350,23 @@ impl Narrator<'_> {
         for support in &self.member.supports {
             let name = &support.name;
             let vertical = match &support.vertical {
-                Hold::Spring(k) => Some(self.builder.given(format!("spring of {name}"), Symbol::new("k", name.clone()), &k.typed, &base.coherent(1, -1), k.value.si())),
+                Hold::Spring(k) => Some(self.builder.given(
+                    format!("spring of {name}"),
+                    Symbol::new("k", name.clone()),
+                    &k.typed,
+                    &base.coherent(1, -1),
+                    k.value.si(),
+                )),
                 _ => None,
             };
             let rotation = match &support.rotation {
-                Hold::Spring(k) => Some(self.builder.given(format!("rotational spring of {name}"), Symbol::new("c", name.clone()), &k.typed, &base.rotational(), k.value.si())),
+                Hold::Spring(k) => Some(self.builder.given(
+                    format!("rotational spring of {name}"),
+                    Symbol::new("c", name.clone()),
+                    &k.typed,
+                    &base.rotational(),
+                    k.value.si(),
+                )),
                 _ => None,
             };
             self.book.springs.push((vertical, rotation));
@@ -308,40 +395,94 @@ impl Narrator<'_> {
         match kind {
             LoadKind::SelfWeight => LoadBook::SelfWeight,
             LoadKind::Uniform { w, .. } => {
-                let w = self.builder.given(format!("uniform load of {case}"), next("w"), &w.typed, &intensity, w.value.si());
+                let w = self.builder.given(
+                    format!("uniform load of {case}"),
+                    next("w"),
+                    &w.typed,
+                    &intensity,
+                    w.value.si(),
+                );
                 LoadBook::Spread(w.clone(), w)
             }
             LoadKind::Linear { left, right, .. } => {
-                let near = self.builder.given(format!("linear load of {case}, left"), next("w"), &left.typed, &intensity, left.value.si());
-                let far = self.builder.given(format!("linear load of {case}, right"), next("w"), &right.typed, &intensity, right.value.si());
+                let near = self.builder.given(
+                    format!("linear load of {case}, left"),
+                    next("w"),
+                    &left.typed,
+                    &intensity,
+                    left.value.si(),
+                );
+                let far = self.builder.given(
+                    format!("linear load of {case}, right"),
+                    next("w"),
+                    &right.typed,
+                    &intensity,
+                    right.value.si(),
+                );
                 LoadBook::Spread(near, far)
             }
             LoadKind::Area { q, width, .. } => {
                 let symbol = next("w");
-                let pressure = self.builder.given(format!("area load of {case}"), Symbol::new("q", symbol.sub.clone()), &q.typed, &base.coherent(1, -2), q.value.si());
-                let across = self.builder.given(format!("tributary width of {case}"), Symbol::new("b", symbol.sub.clone()), &width.typed, &base.coherent(0, 1), width.value.si());
+                let pressure = self.builder.given(
+                    format!("area load of {case}"),
+                    Symbol::new("q", symbol.sub.clone()),
+                    &q.typed,
+                    &base.coherent(1, -2),
+                    q.value.si(),
+                );
+                let across = self.builder.given(
+                    format!("tributary width of {case}"),
+                    Symbol::new("b", symbol.sub.clone()),
+                    &width.typed,
+                    &base.coherent(0, 1),
+                    width.value.si(),
+                );
                 let value = q.value.si() * width.value.si();
                 let what = finding(format!("area load of {case} per length"), symbol, (What::Other, intensity), value);
                 let w = self.builder.state(what.bold(), Some(pressure * across));
                 LoadBook::Spread(w.clone(), w)
             }
-            LoadKind::Point { p, .. } => {
-                LoadBook::Single(self.builder.given(format!("force of {case}"), next("P"), &p.typed, &base.coherent(1, 0), p.value.si()))
-            }
-            LoadKind::Couple { m, .. } => {
-                LoadBook::Single(self.builder.given(format!("couple of {case}"), next("M"), &m.typed, &base.coherent(1, 1), m.value.si()))
-            }
+            LoadKind::Point { p, .. } => LoadBook::Single(self.builder.given(
+                format!("force of {case}"),
+                next("P"),
+                &p.typed,
+                &base.coherent(1, 0),
+                p.value.si(),
+            )),
+            LoadKind::Couple { m, .. } => LoadBook::Single(self.builder.given(
+                format!("couple of {case}"),
+                next("M"),
+                &m.typed,
+                &base.coherent(1, 1),
+                m.value.si(),
+            )),
             LoadKind::Settlement { support, by } => {
                 let name = self.support_name(*support);
-                LoadBook::Single(self.builder.given(format!("settlement of {name} in {case}"), next("s"), &by.typed, &base.coherent(0, 1), by.value.si()))
+                LoadBook::Single(self.builder.given(
+                    format!("settlement of {name} in {case}"),
+                    next("s"),
+                    &by.typed,
+                    &base.coherent(0, 1),
+                    by.value.si(),
+                ))
             }
             LoadKind::Rotation { support, by } => {
                 let name = self.support_name(*support);
-                LoadBook::Single(self.builder.given(format!("imposed turn of {name} in {case}"), next("theta"), &by.typed, &base.turning(0, 0), by.value.si()))
+                LoadBook::Single(self.builder.given(
+                    format!("imposed turn of {name} in {case}"),
+                    next("theta"),
+                    &by.typed,
+                    &base.turning(0, 0),
+                    by.value.si(),
+                ))
             }
-            LoadKind::Gradient { difference, .. } => {
-                LoadBook::Single(self.builder.given(format!("difference of temperature, top less bottom, of {case}"), next("dT"), &difference.typed, &base.temperature(), difference.value.si()))
-            }
+            LoadKind::Gradient { difference, .. } => LoadBook::Single(self.builder.given(
+                format!("difference of temperature, top less bottom, of {case}"),
+                next("dT"),
+                &difference.typed,
+                &base.temperature(),
+                difference.value.si(),
+            )),
         }
     }
 
@@ -381,4 +522,3 @@ fn exact_metres(place: Place) -> Typed {
     let metre = crate::quantity::Unit::known("m").map(|metre| (metre, 1));
     Typed { terms: vec![crate::quantity::Term { figure: place.exact(), unit: crate::quantity::Unit::of(metre) }] }
 }
-

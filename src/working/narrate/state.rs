@@ -213,7 +213,11 @@ impl Teller<'_, '_, '_> {
     fn joint_finding(&self, joint: usize, sign: f64) -> (String, Symbol, f64) {
         let at = self.part(joint).map_or(Place::ZERO, |part| part.to);
         let name = self.narrator.place_name(at);
-        (format!("upward force that the joint at {name} gives the part"), Symbol::new("J", name), sign * self.state.joints.get(joint))
+        (
+            format!("upward force that the joint at {name} gives the part"),
+            Symbol::new("J", name),
+            sign * self.state.joints.get(joint),
+        )
     }
 
     fn far_force(&mut self, part: usize, holder: Holder, moments: Vec<Traced>, arm: Traced, about: Place) -> Traced {
@@ -269,7 +273,12 @@ impl Teller<'_, '_, '_> {
             }) {
                 let reaction = self.told.reactions.get(support).cloned().unwrap_or_else(nothing);
                 let name = self.narrator.place_name(geometry.to);
-                let [shear, moment] = self.narrator.cut_findings(found.right, &format!("left of {name}"), &format!("{name}l"), self.scale);
+                let [shear, moment] = self.narrator.cut_findings(
+                    found.right,
+                    &format!("left of {name}"),
+                    &format!("{name}l"),
+                    self.scale,
+                );
                 cut = (
                     self.narrator.builder.find(shear, cut.0 - reaction.0),
                     self.narrator.builder.find(moment, cut.1 + reaction.1),
@@ -279,7 +288,8 @@ impl Teller<'_, '_, '_> {
                 *slot = cut.clone();
             }
             let name = self.narrator.place_name(geometry.from);
-            let findings = self.narrator.cut_findings(found.left, &format!("right of {name}"), &format!("{name}r"), self.scale);
+            let findings =
+                self.narrator.cut_findings(found.left, &format!("right of {name}"), &format!("{name}r"), self.scale);
             let acts = self.loads.acts.get(piece).cloned().unwrap_or_default();
             let l = self.narrator.distance(geometry.from, geometry.to);
             cut = self.narrator.near_end(&cut, &l, &acts, findings, false);
@@ -305,12 +315,17 @@ impl Teller<'_, '_, '_> {
         if cut.0.is_zero() && cut.1.is_zero() && acts.is_empty() {
             return nothing();
         }
-        let [v, psi] = self.sway_findings(found.own, &format!("by own bending of {from}–{to}"), ["delta", "phi"], &format!("{from}{to}"));
+        let [v, psi] = self.sway_findings(
+            found.own,
+            &format!("by own bending of {from}–{to}"),
+            ["delta", "phi"],
+            &format!("{from}{to}"),
+        );
         let basis = acts.first().map_or("cantilever: force and couple at the tip", Act::basis);
         let found = [v.basis("cantilever: force and couple at the tip"), psi.basis(basis)];
         let l = self.narrator.distance(piece.from, piece.to);
         if matches!(piece.stiffness, crate::analysis::stiffness::Stiffness::Tapered(_)) {
-            return self.narrator.tapered_bending(piece, &l, piece.length, &cut, &acts, found, true);
+            return self.narrator.tapered_bending(piece, &l, piece.length, &cut, &acts, found);
         }
         self.narrator.own_bending(piece, &l, &cut, &acts, found).unwrap_or_else(nothing)
     }
@@ -331,7 +346,10 @@ impl Teller<'_, '_, '_> {
             let title = if walled { format!("of {name}") } else { format!("carried to {name}, the part's start held") };
             let [v, psi] = self.sway_findings(state.to_end, &title, letters, &name);
             carried = (
-                self.narrator.builder.find(v.basis("shift + turn × length + own bending"), sums::chained_v(carried.0, carried.1.clone(), l, own_v)),
+                self.narrator.builder.find(
+                    v.basis("shift + turn × length + own bending"),
+                    sums::chained_v(carried.0, carried.1.clone(), l, own_v),
+                ),
                 self.narrator.builder.find(psi, sums::chained_psi(carried.1, own_psi)),
             );
             if let Some(slot) = self.carried.get_mut(piece) {
@@ -346,7 +364,8 @@ impl Teller<'_, '_, '_> {
     fn walled(&self, part: &Part) -> bool {
         let Hold::DeflectionAndTurn(Holder::Support(at), turn) = part.hold else { return false };
         let supports = &self.narrator.analysis.model.supports;
-        let rigid = supports.get(at).is_some_and(|held| held.at == part.from && held.give == 0.0 && held.turn_give == 0.0);
+        let rigid =
+            supports.get(at).is_some_and(|held| held.at == part.from && held.give == 0.0 && held.turn_give == 0.0);
         let still = self.loads.imposed.get(at).is_none_or(|(v, psi)| v.is_zero() && psi.is_zero());
         at == turn && rigid && still
     }
@@ -399,22 +418,28 @@ impl Teller<'_, '_, '_> {
     fn support_deflection(&mut self, support: usize) -> Traced {
         let imposed = self.loads.imposed.get(support).map_or_else(Traced::zero, |pair| pair.0.clone());
         let reaction = self.told.reactions.get(support).map_or_else(Traced::zero, |pair| pair.0.clone());
-        let Some(k) = self.narrator.book.springs.get(support).and_then(|spring| spring.0.clone()) else { return imposed };
+        let Some(k) = self.narrator.book.springs.get(support).and_then(|spring| spring.0.clone()) else {
+            return imposed;
+        };
         let give = self.narrator.analysis.model.supports.get(support).map_or(0.0, |held| held.give);
         let value = self.narrator.builder.value(&imposed) + self.narrator.builder.value(&reaction) * give;
         let name = self.narrator.support_name(support);
-        let what = finding(format!("give of the spring at {name}"), Symbol::new("v", name), self.scale.v.clone(), value);
+        let what =
+            finding(format!("give of the spring at {name}"), Symbol::new("v", name), self.scale.v.clone(), value);
         self.narrator.builder.find(what, sums::yielded(imposed, reaction, k))
     }
 
     fn held_turn(&mut self, support: usize) -> Traced {
         let imposed = self.loads.imposed.get(support).map_or_else(Traced::zero, |pair| pair.1.clone());
         let moment = self.told.reactions.get(support).map_or_else(Traced::zero, |pair| pair.1.clone());
-        let Some(c) = self.narrator.book.springs.get(support).and_then(|spring| spring.1.clone()) else { return imposed };
+        let Some(c) = self.narrator.book.springs.get(support).and_then(|spring| spring.1.clone()) else {
+            return imposed;
+        };
         let give = self.narrator.analysis.model.supports.get(support).map_or(0.0, |held| held.turn_give);
         let value = self.narrator.builder.value(&imposed) + self.narrator.builder.value(&moment) * give;
         let name = self.narrator.support_name(support);
-        let what = finding(format!("turn of the spring at {name}"), Symbol::new("theta", name), self.scale.psi.clone(), value);
+        let what =
+            finding(format!("turn of the spring at {name}"), Symbol::new("theta", name), self.scale.psi.clone(), value);
         self.narrator.builder.find(what, sums::yielded(imposed, moment, c))
     }
 

@@ -3,11 +3,11 @@
 use super::acts::Act;
 use super::state::Pair;
 use super::{Finding, Narrator, finding};
-use crate::analysis::own::{Cut, Station, stations};
-use crate::analysis::stiffness::{Stiffness, Tapered, cubic_rigidity};
+use crate::analysis::action::Action;
 use crate::analysis::equilibrium as sums;
 use crate::analysis::model::Piece;
-use crate::analysis::action::Action;
+use crate::analysis::own::{Cut, Station, stations};
+use crate::analysis::stiffness::{Stiffness, Tapered, cubic_rigidity};
 use crate::member::TaperLaw;
 use crate::quantity::Unit;
 use crate::working::draft::Symbol;
@@ -21,7 +21,6 @@ fn bend(curvature: Traced, moment: Traced, ei: Traced) -> Traced {
 
 impl Narrator<'_> {
     /// Deflection and turn of the tip of the first length `x` of a tapered piece, by Gauss-Legendre quadrature.
-    #[expect(clippy::too_many_arguments, reason = "a length needs its step, its value and whether it is the whole piece")]
     pub fn tapered_bending(
         &mut self,
         piece: &Piece,
@@ -30,7 +29,6 @@ impl Narrator<'_> {
         cut: &Pair,
         acts: &[Act],
         found: [Finding; 2],
-        _whole: bool,
     ) -> Pair {
         let Stiffness::Tapered(tapered) = piece.stiffness else { return (Traced::zero(), Traced::zero()) };
         let value = Cut { shear: self.builder.value(&cut.0), moment: self.builder.value(&cut.1) };
@@ -42,16 +40,34 @@ impl Narrator<'_> {
             let place = index + 1;
             let length = self.panel(sample, acts, &mut ends);
             let at = self.sample_place(sample, place, &length, &ends);
-            let arm = self.step(format!("arm of sample {place}"), "d", place, (What::Other, self.builder.base.coherent(0, 1)), x - sample.x, l.clone() - at.clone());
-            let (shear, moment) = self.sample_cut(sample, place, x, &at, cut, acts, &arm);
+            let arm = self.step(
+                format!("arm of sample {place}"),
+                "d",
+                place,
+                (What::Other, self.builder.base.coherent(0, 1)),
+                x - sample.x,
+                l.clone() - at.clone(),
+            );
+            let (shear, moment) = self.sample_cut(sample, place, &at, cut, acts, &arm);
             let ei = self.sample_rigidity(piece, &tapered, sample, place, &at);
             let curvature = self.sample_curvature(piece, &tapered, sample, place, &at, acts);
-            let unit = self.builder.base.coherent(0, -1);
-            let (_, per) = (&found, unit);
-            let what = Finding { unit: self.bend_unit(&found, &per), ..finding(format!("turn per length at sample {place}"), Symbol::new("q", place.to_string()), (What::Other, per.clone()), sample.bend()) };
+            let unit = self.bend_unit(&found);
+            let what = finding(
+                format!("turn per length at sample {place}"),
+                Symbol::new("q", place.to_string()),
+                (What::Other, unit),
+                sample.bend(),
+            );
             let q = self.builder.find(what, bend(curvature, moment, ei));
-            let share = self.weight(sample);
-            let weight = self.step(format!("weight of sample {place}"), "W", place, (What::Other, self.builder.base.coherent(0, 1)), sample.weight, share * length);
+            let share = self.share(sample);
+            let weight = self.step(
+                format!("weight of sample {place}"),
+                "W",
+                place,
+                (What::Other, self.builder.base.coherent(0, 1)),
+                sample.weight,
+                share * length,
+            );
             turns.push(weight.clone() * q.clone());
             shifts.push(weight.clone() * q * arm);
             if let (Some(_), Some(ga)) = (sample.ga, self.sample_shear(piece, &tapered, sample, place, &at)) {
@@ -66,12 +82,20 @@ impl Narrator<'_> {
     }
 
     /// Unit of the turn per length, given the units of the state: that of the turn, per length.
-    fn bend_unit(&self, found: &[Finding; 2], _: &Unit) -> Unit {
+    fn bend_unit(&self, found: &[Finding; 2]) -> Unit {
         let [_, psi] = found;
         crate::working::units::product(&psi.unit, &self.builder.base.coherent(0, -1))
     }
 
-    fn step(&mut self, title: String, letter: &'static str, index: usize, (what, unit): (What, Unit), value: f64, expression: Traced) -> Traced {
+    fn step(
+        &mut self,
+        title: String,
+        letter: &'static str,
+        index: usize,
+        (what, unit): (What, Unit),
+        value: f64,
+        expression: Traced,
+    ) -> Traced {
         self.builder.find(finding(title, Symbol::new(letter, index.to_string()), (what, unit), value), expression)
     }
 
@@ -106,7 +130,12 @@ impl Narrator<'_> {
         });
         let end = load.unwrap_or_else(|| {
             let unit = self.builder.base.coherent(0, 1);
-            let what = finding("chosen division of the quadrature", Symbol::new("e", ends.len().to_string()), (What::Other, unit), at);
+            let what = finding(
+                "chosen division of the quadrature",
+                Symbol::new("e", ends.len().to_string()),
+                (What::Other, unit),
+                at,
+            );
             self.builder.state(what, None)
         });
         ends.push((at, end.clone()));
@@ -121,10 +150,17 @@ impl Narrator<'_> {
             .map_or_else(Traced::zero, |(_, known)| known.clone());
         let fraction = self.constant("fraction of the panel", "r", sample.fraction);
         let unit = self.builder.base.coherent(0, 1);
-        self.step(format!("place of sample {place}"), "x", place, (What::Other, unit), sample.x, from + fraction * length.clone())
+        self.step(
+            format!("place of sample {place}"),
+            "x",
+            place,
+            (What::Other, unit),
+            sample.x,
+            from + fraction * length.clone(),
+        )
     }
 
-    fn weight(&mut self, sample: &Station) -> Traced {
+    fn share(&mut self, sample: &Station) -> Traced {
         self.constant("weight as a fraction of the panel", "W", sample.share)
     }
 
@@ -144,12 +180,30 @@ impl Narrator<'_> {
     }
 
     #[expect(clippy::too_many_arguments, reason = "a cut needs its place, its length and what acts")]
-    fn sample_cut(&mut self, sample: &Station, place: usize, _x: f64, at: &Traced, cut: &Pair, acts: &[Act], arm: &Traced) -> Pair {
+    fn sample_cut(
+        &mut self,
+        sample: &Station,
+        place: usize,
+        at: &Traced,
+        cut: &Pair,
+        acts: &[Act],
+        arm: &Traced,
+    ) -> Pair {
         let tails: Vec<Act> = acts.iter().filter_map(|act| self.tail(act, sample.x, at, true)).collect();
         let scale = self.book.scale.clone().unwrap_or_else(|| self.plain());
         let found = [
-            finding(format!("shear at sample {place}"), Symbol::new("V", place.to_string()), scale.shear, sample.cut.shear),
-            finding(format!("moment at sample {place}"), Symbol::new("M", place.to_string()), scale.moment, sample.cut.moment),
+            finding(
+                format!("shear at sample {place}"),
+                Symbol::new("V", place.to_string()),
+                scale.shear,
+                sample.cut.shear,
+            ),
+            finding(
+                format!("moment at sample {place}"),
+                Symbol::new("M", place.to_string()),
+                scale.moment,
+                sample.cut.moment,
+            ),
         ];
         if sample.ga.is_some() {
             return self.near_end(cut, arm, &tails, found, false);
@@ -161,13 +215,25 @@ impl Narrator<'_> {
     }
 
     /// EI at a sample, written once for a place of a piece.
-    fn sample_rigidity(&mut self, piece: &Piece, tapered: &Tapered, sample: &Station, place: usize, at: &Traced) -> Traced {
+    fn sample_rigidity(
+        &mut self,
+        piece: &Piece,
+        tapered: &Tapered,
+        sample: &Station,
+        place: usize,
+        at: &Traced,
+    ) -> Traced {
         let Some(segment) = self.member.segments.get(piece.segment) else { return Traced::zero() };
         let Some(to) = segment.taper.map(|taper| taper.to) else { return Traced::zero() };
         let rigidity = |index: usize| self.book.sections.get(index).map_or_else(Traced::zero, |book| book.ei.clone());
         let (near, far) = (rigidity(segment.section), rigidity(to));
         let (s, l) = self.along(piece, tapered, sample, place, at);
-        let what = finding(format!("rigidity at sample {place}"), Symbol::new("EI", place.to_string()), (What::Other, self.builder.base.coherent(1, 2)), sample.ei);
+        let what = finding(
+            format!("rigidity at sample {place}"),
+            Symbol::new("EI", place.to_string()),
+            (What::Other, self.builder.base.coherent(1, 2)),
+            sample.ei,
+        );
         let expression = match tapered.law {
             TaperLaw::Linear => crate::analysis::stiffness::linear_between(near, far, s, l),
             TaperLaw::Cubic => {
@@ -189,11 +255,21 @@ impl Narrator<'_> {
         let (near, far, ratio) = (near.clone(), far.clone(), tapered.ei1 / tapered.ei0);
         let sub = (segment + 1).to_string();
         let root = self.builder.aside(slot, |builder| {
-            let what = finding("cube root of the ratio of I, chosen", Symbol::new("rho", sub.clone()), (What::Other, none.clone()), tapered.root);
+            let what = finding(
+                "cube root of the ratio of I, chosen",
+                Symbol::new("rho", sub.clone()),
+                (What::Other, none.clone()),
+                tapered.root,
+            );
             let root = builder.state(what, None);
             let what = finding("ratio of I", Symbol::new("i", sub.clone()), (What::Other, none.clone()), ratio);
             builder.state(what, Some(far / near));
-            let what = finding("the chosen root cubed, to be compared with the ratio", Symbol::new("i", format!("{sub}c")), (What::Other, none.clone()), ratio);
+            let what = finding(
+                "the chosen root cubed, to be compared with the ratio",
+                Symbol::new("i", format!("{sub}c")),
+                (What::Other, none.clone()),
+                ratio,
+            );
             builder.state(what, Some(crate::number::Number::power(root.clone(), 3)));
             root
         });
@@ -202,25 +278,57 @@ impl Narrator<'_> {
     }
 
     /// Distance of a sample along its segment, and the segment's length.
-    fn along(&mut self, piece: &Piece, tapered: &Tapered, sample: &Station, place: usize, at: &Traced) -> (Traced, Traced) {
+    fn along(
+        &mut self,
+        piece: &Piece,
+        tapered: &Tapered,
+        sample: &Station,
+        place: usize,
+        at: &Traced,
+    ) -> (Traced, Traced) {
         let Some(segment) = self.member.segments.get(piece.segment) else { return (at.clone(), at.clone()) };
         let offset = self.distance(segment.from, piece.from);
         let l = self.distance(segment.from, segment.to);
         let unit = self.builder.base.coherent(0, 1);
-        let what = finding(format!("sample {place} along its segment"), Symbol::new("s", place.to_string()), (What::Other, unit), tapered.offset + sample.x);
+        let what = finding(
+            format!("sample {place} along its segment"),
+            Symbol::new("s", place.to_string()),
+            (What::Other, unit),
+            tapered.offset + sample.x,
+        );
         (self.builder.find(what, offset + at.clone()), l)
     }
 
-    fn sample_shear(&mut self, piece: &Piece, tapered: &Tapered, sample: &Station, place: usize, at: &Traced) -> Option<Traced> {
+    fn sample_shear(
+        &mut self,
+        piece: &Piece,
+        tapered: &Tapered,
+        sample: &Station,
+        place: usize,
+        at: &Traced,
+    ) -> Option<Traced> {
         let segment = self.member.segments.get(piece.segment)?;
         let near = self.book.sections.get(segment.section)?.ga.clone()?;
         let far = self.book.sections.get(segment.taper?.to)?.ga.clone()?;
         let (s, l) = self.along(piece, tapered, sample, place, at);
-        let what = finding(format!("shear rigidity at sample {place}"), Symbol::new("GA", place.to_string()), (What::Other, self.builder.base.coherent(1, 0)), sample.ga?);
+        let what = finding(
+            format!("shear rigidity at sample {place}"),
+            Symbol::new("GA", place.to_string()),
+            (What::Other, self.builder.base.coherent(1, 0)),
+            sample.ga?,
+        );
         Some(self.linear(&near, &far, &s, &l, what))
     }
 
-    fn sample_curvature(&mut self, piece: &Piece, tapered: &Tapered, sample: &Station, place: usize, at: &Traced, acts: &[Act]) -> Traced {
+    fn sample_curvature(
+        &mut self,
+        piece: &Piece,
+        tapered: &Tapered,
+        sample: &Station,
+        place: usize,
+        at: &Traced,
+        acts: &[Act],
+    ) -> Traced {
         let strains: Vec<Traced> = acts
             .iter()
             .filter(|act| matches!(act.action, Action::Gradient { a, c, .. } if a <= sample.x && sample.x < a + c))
@@ -237,10 +345,20 @@ impl Narrator<'_> {
         let Some((near, far)) = books else { return Traced::zero() };
         let (s, l) = self.along(piece, tapered, sample, place, at);
         let unit = self.builder.base.coherent(0, 1);
-        let what = finding(format!("depth at sample {place}"), Symbol::new("h", place.to_string()), (What::Other, unit), tapered.depth(sample.x));
+        let what = finding(
+            format!("depth at sample {place}"),
+            Symbol::new("h", place.to_string()),
+            (What::Other, unit),
+            tapered.depth(sample.x),
+        );
         let depth = self.linear(&near, &far, &s, &l, what);
         let unit = self.builder.base.coherent(0, -1);
-        let what = finding(format!("curvature by temperature at sample {place}"), Symbol::new("kappa", place.to_string()), (What::Other, unit), sample.curvature);
+        let what = finding(
+            format!("curvature by temperature at sample {place}"),
+            Symbol::new("kappa", place.to_string()),
+            (What::Other, unit),
+            sample.curvature,
+        );
         self.builder.find(what, sums::sum(strains) / depth)
     }
 }
