@@ -7,15 +7,19 @@ mod collide;
 mod elevation;
 mod hatch;
 mod label;
+mod load_words;
+mod loads;
 mod measure;
 pub mod primitive;
 mod rows;
+mod strips;
 mod support;
 mod words;
 
 pub use collide::{Collision, CollisionKind};
 pub use elevation::elevation;
 pub use hatch::hatch_lines;
+pub use loads::loads;
 pub use primitive::{Anchor, Dash, Drawing, Fill, Item, Point, Run, Stroke};
 pub use words::{Cut, Words};
 

@@ -51,8 +51,8 @@ const POLES: f64 = 1.3;
 const UPRIGHT: f64 = 3.0;
 /// Height of the zone in which poles fan out, mm.
 const FAN: f64 = 2.2;
-/// More rows than this look worse than upright labels.
-const MOST_ROWS: usize = 3;
+/// How much higher rows may grow than upright labels, which are harder to read.
+const PATIENCE: f64 = 1.5;
 
 /// Places all notes; returns the far edge of the layer. Nothing is left out, whatever the number of notes.
 pub fn annotate(canvas: &mut Canvas, notes: &[Note], layer: Layer) -> f64 {
@@ -67,10 +67,10 @@ pub fn annotate(canvas: &mut Canvas, notes: &[Note], layer: Layer) -> f64 {
         return row(canvas, &notes, &centres, layer);
     }
     let flags = flags(&notes, layer);
-    if flags.iter().all(|flag| flag.row < MOST_ROWS) {
-        return raise(canvas, &notes, &flags, layer);
-    }
-    match upright(&notes, layer) {
+    let rows = flags.iter().map(|flag| flag.row + 1).max().unwrap_or(1);
+    let longest = notes.iter().map(Note::width).fold(0.0, f64::max);
+    let places = if rows as f64 * ROW > PATIENCE * longest { upright(&notes, layer) } else { None };
+    match places {
         Some(places) => stand(canvas, &notes, &places, layer),
         None => raise(canvas, &notes, &flags, layer),
     }
@@ -186,7 +186,9 @@ fn stand(canvas: &mut Canvas, notes: &[Note], places: &[f64], layer: Layer) -> f
     let mut longest = 0.0_f64;
     for (note, place) in notes.iter().zip(places) {
         let mut points: Vec<_> = note.start.iter().map(|start| at(note.x, *start)).collect();
-        points.extend([at(note.x, layer.edge), at(*place, knee)]);
+        if fan || note.start.is_some() || layer.beside {
+            points.extend([at(note.x, layer.edge), at(*place, knee)]);
+        }
         canvas.polyline(points, solid(HAIR));
         let anchor = if layer.up { Anchor::Start } else { Anchor::End };
         canvas.turned(at(place + (above - below) / 2.0, knee + away * 0.5), anchor, note.runs.clone());

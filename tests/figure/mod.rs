@@ -23,3 +23,13 @@ fn elevations_are_clean() {
     clean("elevation-propped", &figure::elevation(&build::propped(), &said(), COLUMN));
     clean("elevation-crowded", &figure::elevation(&build::crowded(), &Words::default(), COLUMN));
 }
+
+#[test]
+fn load_cases_are_clean() {
+    let member = build::propped();
+    for (index, case) in member.cases.iter().enumerate() {
+        let said = Words { total: "Total load 126.0 kN downward.".to_owned(), self_weight: "0.42 kN/m".to_owned(), ..said() };
+        clean(&format!("loads-propped-{}", case.name), &figure::loads(&member, index, &said, COLUMN));
+    }
+    clean("loads-crowded", &figure::loads(&build::crowded(), 0, &Words::default(), COLUMN));
+}
