@@ -227,15 +227,22 @@ impl Sketch<'_> {
         let mut notes = name_notes(self.member, self.said, self.scale, &self.depths, |support| {
             movements(self.member, &self.kinds, support)
         });
+        let named = notes.len();
         for kind in &self.kinds {
             if let LoadKind::Couple { m, at: place } = kind {
                 let text = label::given(&m.typed, m.value.si(), Measure::Couple, system, true);
-                let stands = self.member.supports.iter().any(|support| {
-                    (self.x(support.at) - self.x(*place)).abs() < symbol_size(self.member, self.scale)
-                });
-                let half = self.depths.half_at(self.member, place.x());
-                let start = (!stands).then_some(half + 0.2);
-                notes.push(Note { x: self.x(*place), start, runs: vec![plain(text)] });
+                let x = self.x(*place);
+                // A couple at a named place shares the name's label.
+                match notes.iter_mut().take(named).find(|note| (note.x - x).abs() < 0.05) {
+                    Some(note) => {
+                        let joint = if note.runs.len() > 1 { "," } else { ":" };
+                        note.runs.push(plain(format!("{joint} {text}")));
+                    }
+                    None => {
+                        let start = Some(self.depths.half_at(self.member, place.x()) + 0.2);
+                        notes.push(Note { x, start, runs: vec![plain(text)] });
+                    }
+                }
             }
         }
         let edge = low.max(COUPLE) + 0.3;

@@ -94,17 +94,17 @@ pub fn stack(strips: Vec<Strip>, poles: &[f64], base: f64, right: f64) -> Vec<Pl
         }
     };
     let mut placed: Vec<Placed> = Vec::new();
-    let mut levels: Vec<Vec<(f64, f64)>> = Vec::new();
+    let mut levels: Vec<Vec<Taken>> = Vec::new();
     let mut rows = Vec::new();
     for (strip, spots) in strips.into_iter().zip(spots) {
-        let (from, to) = reach(&strip, &spots);
-        let free = |level: &Vec<(f64, f64)>| level.iter().all(|(a, b)| to + 0.6 <= *a || from >= *b + 0.6);
+        let wants = Taken::by(&strip, &spots);
+        let free = |level: &Vec<Taken>| level.iter().all(|taken| !wants.meets(taken));
         let level = levels.iter().position(free).unwrap_or(levels.len());
         if level == levels.len() {
             levels.push(Vec::new());
         }
         if let Some(taken) = levels.get_mut(level) {
-            taken.push((from, to));
+            taken.push(wants);
         }
         rows.push(level);
         placed.push(Placed { strip, spots, base });
@@ -122,16 +122,34 @@ pub fn stack(strips: Vec<Strip>, poles: &[f64], base: f64, right: f64) -> Vec<Pl
     placed
 }
 
-/// Where a strip and its labels reach.
-fn reach(strip: &Strip, spots: &[Spot]) -> (f64, f64) {
-    let mut reach = (strip.from, strip.to);
-    for (spot, (_, _, runs)) in spots.iter().zip(&strip.labels) {
-        if let Spot::Over(x) = spot {
-            let half = measure::width(runs, LABEL) / 2.0;
-            reach = (reach.0.min(x - half), reach.1.max(x + half));
-        }
+/// What a strip takes of its level, from and to.
+struct Taken {
+    strip: (f64, f64),
+    labels: Vec<(f64, f64)>,
+}
+
+impl Taken {
+    fn by(strip: &Strip, spots: &[Spot]) -> Self {
+        let label = |(spot, (_, _, runs)): (&Spot, &(f64, f64, Vec<Run>))| match spot {
+            Spot::Over(x) => {
+                let half = measure::width(runs, LABEL) / 2.0;
+                Some((x - half, x + half))
+            }
+            Spot::Away(_) => None,
+        };
+        Self { strip: (strip.from, strip.to), labels: spots.iter().zip(&strip.labels).filter_map(label).collect() }
     }
-    reach
+
+    /// Whether both cannot stand in one level; strips may touch end to end.
+    fn meets(&self, other: &Self) -> bool {
+        let overlap = |a: (f64, f64), b: (f64, f64), gap: f64| a.0 < b.1 + gap && b.0 < a.1 + gap;
+        let clash = |labels: &[(f64, f64)], others: &Self| {
+            labels.iter().any(|label| {
+                overlap(*label, others.strip, 0.5) || others.labels.iter().any(|theirs| overlap(*label, *theirs, 0.9))
+            })
+        };
+        overlap(self.strip, other.strip, -0.05) || clash(&self.labels, other) || clash(&other.labels, self)
+    }
 }
 
 /// Where the labels of a strip stand: as near the middle of their part as the poles allow. One that finds no room gets a
@@ -169,10 +187,12 @@ pub fn draw(canvas: &mut Canvas, placed: &Placed) {
         Look::Gradient { top } => gradient(canvas, placed, top),
         Look::Load | Look::Weight => arrows(canvas, placed),
     }
-    for (spot, (from, to, runs)) in placed.spots.iter().zip(&strip.labels) {
+    for (spot, (_, _, runs)) in placed.spots.iter().zip(&strip.labels) {
         if let Spot::Over(x) = spot {
-            let lines = [*from, *to, (from + to) / 2.0].map(|x| placed.line(x).unwrap_or(placed.base));
-            let line = lines.into_iter().fold(placed.base - 1.0, f64::min).min(placed.base - placed.height());
+            // The line is straight or bent towards the base, so that it is highest at an end of the label.
+            let half = measure::width(runs, LABEL) / 2.0 + 0.6;
+            let ends = [x - half, x + half].map(|end| end.clamp(strip.from, strip.to));
+            let line = ends.into_iter().filter_map(|end| placed.line(end)).fold(placed.base - 1.0, f64::min);
             let below = measure::heights(runs, LABEL).1;
             canvas.text(at(*x, line - below - 0.4), Anchor::Middle, runs.clone());
         }
