@@ -11,6 +11,7 @@ mod load_words;
 mod loads;
 mod measure;
 pub mod primitive;
+mod released;
 mod rows;
 mod strips;
 mod support;
@@ -21,6 +22,7 @@ pub use elevation::elevation;
 pub use hatch::hatch_lines;
 pub use loads::loads;
 pub use primitive::{Anchor, Dash, Drawing, Fill, Item, Point, Run, Stroke};
+pub use released::released;
 pub use words::{Cut, Words};
 
 /// Width of the text column, mm.

@@ -4,6 +4,7 @@ mod build;
 mod svg;
 
 use proofspan::figure::{self, COLUMN, Cut, Drawing, Words};
+use proofspan::member::Redundant::{Force, Moment};
 use svg::show;
 
 /// Shows the drawing where asked, and fails with every collision.
@@ -32,4 +33,14 @@ fn load_cases_are_clean() {
         clean(&format!("loads-propped-{}", case.name), &figure::loads(&member, index, &said, COLUMN));
     }
     clean("loads-crowded", &figure::loads(&build::crowded(), 0, &Words::default(), COLUMN));
+}
+
+#[test]
+fn released_members_are_clean() {
+    let propped = build::propped();
+    clean("released-propped", &figure::released(&propped, &[Force(1)], &said(), COLUMN));
+    clean("released-wall", &figure::released(&propped, &[Moment(0)], &said(), COLUMN));
+    let crowded = build::crowded();
+    let chosen = [Moment(1), Moment(2), Moment(3), Force(3), Moment(4), Force(5), Moment(8), Force(6)];
+    clean("released-crowded", &figure::released(&crowded, &chosen, &Words::default(), COLUMN));
 }
