@@ -1,6 +1,7 @@
 //! Drawings as placed primitives in millimetres; pure, measured in the embedded font, tested for collisions.
 
 mod band;
+mod bodies;
 mod canvas;
 mod chain;
 mod collide;
@@ -10,6 +11,7 @@ mod label;
 mod load_words;
 mod loads;
 mod measure;
+mod method;
 pub mod primitive;
 mod released;
 mod rows;
@@ -17,10 +19,12 @@ mod strips;
 mod support;
 mod words;
 
+pub use bodies::free_bodies;
 pub use collide::{Collision, CollisionKind};
 pub use elevation::elevation;
 pub use hatch::hatch_lines;
 pub use loads::loads;
+pub use method::{chained, signs};
 pub use primitive::{Anchor, Dash, Drawing, Fill, Item, Point, Run, Stroke};
 pub use released::released;
 pub use words::{Cut, Words};

@@ -44,3 +44,32 @@ fn released_members_are_clean() {
     let chosen = [Moment(1), Moment(2), Moment(3), Force(3), Moment(4), Force(5), Moment(8), Force(6)];
     clean("released-crowded", &figure::released(&crowded, &chosen, &Words::default(), COLUMN));
 }
+
+/// A cut at every segment end, support and hinge, as the working cuts.
+fn all_cuts(member: &proofspan::member::Member) -> Words {
+    let mut places: Vec<_> = member.segments.iter().map(|s| (s.to, String::new())).collect();
+    places.extend(member.hinges.iter().map(|hinge| (hinge.at, hinge.name.clone())));
+    places.extend(member.supports.iter().map(|support| (support.at, support.name.clone())));
+    places.sort_by(|a, b| a.0.cmp(&b.0).then(b.1.cmp(&a.1)));
+    places.dedup_by_key(|place| place.0);
+    let cut = |(index, (place, name)): (usize, (proofspan::member::Place, String))| Cut {
+        at: place.x(),
+        name: if name.is_empty() { format!("c{index}") } else { name },
+    };
+    Words { cuts: places.into_iter().enumerate().map(cut).collect(), ..Words::default() }
+}
+
+#[test]
+fn free_bodies_are_clean() {
+    clean("bodies-propped", &figure::free_bodies(&build::propped(), &said(), COLUMN));
+    let crowded = build::crowded();
+    clean("bodies-crowded", &figure::free_bodies(&crowded, &all_cuts(&crowded), COLUMN));
+}
+
+#[test]
+fn pictures_of_the_method_are_clean() {
+    for width in [COLUMN, figure::WIDE] {
+        clean(&format!("chained-{width}"), &figure::chained(width));
+        clean(&format!("signs-{width}"), &figure::signs(width));
+    }
+}
