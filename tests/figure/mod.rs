@@ -1,6 +1,7 @@
 //! Drawings: no label on a line or on another label, on fixed, crowded and random members.
 
 mod build;
+mod plots;
 mod svg;
 
 use proofspan::figure::{self, COLUMN, Cut, Drawing, Words};
