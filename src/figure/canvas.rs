@@ -246,7 +246,7 @@ pub fn text_box(place: Point, anchor: Anchor, width: f64, (above, below): (f64, 
 }
 
 /// The item moved and rounded.
-fn shifted(item: Item, dx: f64, dy: f64) -> Item {
+pub fn shifted(item: Item, dx: f64, dy: f64) -> Item {
     let go = |p: Point| rounded(at(p.x + dx, p.y + dy));
     match item {
         Item::Line { from, to, stroke } => Item::Line { from: go(from), to: go(to), stroke },

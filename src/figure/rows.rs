@@ -51,8 +51,8 @@ const POLES: f64 = 1.3;
 const UPRIGHT: f64 = 3.0;
 /// Height of the zone in which poles fan out, mm.
 const FAN: f64 = 2.2;
-/// More rows than this look worse than upright labels.
-const MOST_ROWS: usize = 3;
+/// How much higher rows may grow than upright labels, which are harder to read.
+const PATIENCE: f64 = 1.5;
 
 /// Places all notes; returns the far edge of the layer. Nothing is left out, whatever the number of notes.
 pub fn annotate(canvas: &mut Canvas, notes: &[Note], layer: Layer) -> f64 {
@@ -66,11 +66,14 @@ pub fn annotate(canvas: &mut Canvas, notes: &[Note], layer: Layer) -> f64 {
     {
         return row(canvas, &notes, &centres, layer);
     }
-    let flags = flags(&notes, layer);
-    if flags.iter().all(|flag| flag.row < MOST_ROWS) {
+    if let Some(flags) = mixed(&notes, layer) {
         return raise(canvas, &notes, &flags, layer);
     }
-    match upright(&notes, layer) {
+    let flags = flags(&notes, layer);
+    let rows = flags.iter().map(|flag| flag.row + 1).max().unwrap_or(1);
+    let longest = notes.iter().map(Note::width).fold(0.0, f64::max);
+    let places = if rows as f64 * ROW > PATIENCE * longest { upright(&notes, layer) } else { None };
+    match places {
         Some(places) => stand(canvas, &notes, &places, layer),
         None => raise(canvas, &notes, &flags, layer),
     }
@@ -103,10 +106,53 @@ fn row(canvas: &mut Canvas, notes: &[Note], centres: &[f64], layer: Layer) -> f6
     if layer.up { base - above } else { base + below }
 }
 
-/// A pole with its label to the right.
+/// A pole with its label to the right, or a label of the first row centred on its place.
 struct Flag {
     pole: f64,
     row: usize,
+    centred: bool,
+}
+
+/// Labels that meet no other stand centred in the first row, the others on poles; `None` where the poles would have to
+/// move, or where that saves nothing.
+fn mixed(notes: &[Note], layer: Layer) -> Option<Vec<Flag>> {
+    if layer.beside {
+        return None;
+    }
+    let half = |note: &Note| (note.width() + GAP) / 2.0;
+    let alone = |index: usize, note: &Note| {
+        let meets = |(other, theirs): (usize, &Note)| {
+            other != index && (note.x - theirs.x).abs() < half(note) + half(theirs) + BESIDE
+        };
+        !notes.iter().enumerate().any(meets) && note.x - half(note) >= layer.left && note.x + half(note) <= layer.right
+    };
+    let alone: Vec<bool> = notes.iter().enumerate().map(|(index, note)| alone(index, note)).collect();
+    if !alone.contains(&true) {
+        return None;
+    }
+    let mut placed: Vec<Flag> = Vec::new();
+    for (note, alone) in notes.iter().zip(&alone).rev() {
+        if *alone {
+            placed.push(Flag { pole: note.x, row: 0, centred: true });
+            continue;
+        }
+        let end = note.x + BESIDE + note.width() + BESIDE;
+        let crowded = placed.iter().any(|other| !other.centred && other.pole < note.x + POLES);
+        if end > layer.right + BESIDE || crowded {
+            return None;
+        }
+        let left = |index: usize| {
+            let other = notes.get(notes.len() - 1 - index);
+            other.map_or(f64::INFINITY, |other| other.x - half(other))
+        };
+        let hit = placed.iter().enumerate().filter(|(index, other)| {
+            if other.centred { left(*index) < end } else { other.pole < end }
+        });
+        let row = hit.map(|(_, other)| other.row + 1).max().unwrap_or(0);
+        placed.push(Flag { pole: note.x, row, centred: false });
+    }
+    placed.reverse();
+    Some(placed)
 }
 
 /// Poles and rows for all notes. Taken from the right, each label stands just beyond every pole that it would hit.
@@ -130,7 +176,7 @@ fn flags(notes: &[Note], layer: Layer) -> Vec<Flag> {
     for (note, pole) in notes.iter().zip(&poles).rev() {
         let end = pole + BESIDE + note.width() + BESIDE;
         let hit = placed.iter().filter(|other| other.pole < end).map(|other| other.row + 1).max();
-        placed.push(Flag { pole: *pole, row: hit.unwrap_or(0) });
+        placed.push(Flag { pole: *pole, row: hit.unwrap_or(0), centred: false });
     }
     placed.reverse();
     placed
@@ -150,6 +196,11 @@ fn raise(canvas: &mut Canvas, notes: &[Note], flags: &[Flag], layer: Layer) -> f
     let mut far = knee;
     for (note, flag) in notes.iter().zip(flags) {
         let base = first + away * pitch * flag.row as f64;
+        far = if layer.up { far.min(base - above) } else { far.max(base + below) };
+        if flag.centred {
+            canvas.text(at(flag.pole, base), Anchor::Middle, note.runs.clone());
+            continue;
+        }
         // The pole ends level with the far side of its label.
         let end = if layer.up { base - above } else { base + below * 0.5 };
         let mut points: Vec<_> = note.start.iter().map(|start| at(note.x, *start)).collect();
@@ -165,7 +216,6 @@ fn raise(canvas: &mut Canvas, notes: &[Note], flags: &[Flag], layer: Layer) -> f
         }
         canvas.polyline(points, solid(HAIR));
         canvas.text(at(flag.pole + BESIDE, base), Anchor::Start, note.runs.clone());
-        far = if layer.up { far.min(base - above) } else { far.max(base + below) };
     }
     far
 }
@@ -186,7 +236,9 @@ fn stand(canvas: &mut Canvas, notes: &[Note], places: &[f64], layer: Layer) -> f
     let mut longest = 0.0_f64;
     for (note, place) in notes.iter().zip(places) {
         let mut points: Vec<_> = note.start.iter().map(|start| at(note.x, *start)).collect();
-        points.extend([at(note.x, layer.edge), at(*place, knee)]);
+        if fan || note.start.is_some() || layer.beside {
+            points.extend([at(note.x, layer.edge), at(*place, knee)]);
+        }
         canvas.polyline(points, solid(HAIR));
         let anchor = if layer.up { Anchor::Start } else { Anchor::End };
         canvas.turned(at(place + (above - below) / 2.0, knee + away * 0.5), anchor, note.runs.clone());
