@@ -21,4 +21,4 @@ pub use fonts::{Face, missing_glyph, text_width};
 pub use model::Model;
 pub use page::Paper;
 pub use print::{Attachments, Options, Printed, print, render};
-pub use template::Templates;
+pub use template::{Labels, Templates};

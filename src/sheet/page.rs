@@ -17,15 +17,17 @@ pub const NOTES: f64 = 35.0;
 /// Size of text.
 pub const TEXT_PT: f64 = 10.0;
 /// Size of side notes.
-pub const NOTE_PT: f64 = 8.0;
+pub const NOTE_PT: f64 = 7.5;
 /// Size of tables.
 pub const TABLE_PT: f64 = 9.0;
 /// From one line of text to the next.
 pub const TEXT_LINE: f64 = 4.7;
 /// From one line of a side note to the next.
-pub const NOTE_LINE: f64 = 3.7;
+pub const NOTE_LINE: f64 = 3.2;
+/// White between lines of working.
+pub const LINE_GAP: f64 = 3.2;
 /// From one row of a table to the next, at least.
-pub const TABLE_LINE: f64 = 4.8;
+pub const TABLE_LINE: f64 = 4.6;
 
 /// Paper a sheet is printed on.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize)]
@@ -75,4 +77,9 @@ pub fn lines(text: &str, width: f64, size_pt: f64) -> f64 {
         used += wide;
     }
     count
+}
+
+/// To a tenth of a millimetre.
+pub fn tenth(value: f64) -> f64 {
+    (value * 10.0).round() / 10.0
 }

@@ -14,7 +14,7 @@ pub fn figure(decimal: Decimal) -> String {
     if mantissa.mantissa() == 1 && mantissa.exponent() == 0 {
         return format!("10{raised}");
     }
-    format!("{}{NARROW}×{NARROW}10{raised}", plain(mantissa))
+    format!("{}{NARROW}·{NARROW}10{raised}", plain(mantissa))
 }
 
 fn plain(decimal: Decimal) -> String {
@@ -137,10 +137,10 @@ mod tests {
             ("10000", "10\u{202F}000"),
             ("-1234567.50", "−1\u{202F}234\u{202F}567.50"),
             ("0.0012", "0.0012"),
-            ("0.00012", "1.2\u{202F}×\u{202F}10⁻⁴"),
-            ("0.000012", "1.2\u{202F}×\u{202F}10⁻⁵"),
+            ("0.00012", "1.2\u{202F}·\u{202F}10⁻⁴"),
+            ("0.000012", "1.2\u{202F}·\u{202F}10⁻⁵"),
             ("1e-6", "10⁻⁶"),
-            ("210000000000", "2.10000000000\u{202F}×\u{202F}10¹¹"),
+            ("210000000000", "2.10000000000\u{202F}·\u{202F}10¹¹"),
             ("0", "0"),
             ("0.00", "0.00"),
         ] {

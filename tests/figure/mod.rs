@@ -1,6 +1,6 @@
 //! Drawings: no label on a line or on another label, on fixed, crowded and random members.
 
-mod build;
+pub mod build;
 mod plots;
 mod svg;
 

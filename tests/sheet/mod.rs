@@ -1,8 +1,9 @@
 //! The sheet: printed, read back, and made to hold hostile text.
 
+mod real;
 mod sample;
 
-use proofspan::sheet::print;
+use proofspan::sheet::{Templates, print};
 
 /// Where a test leaves a PDF to be looked at.
 fn leave(name: &str, pdf: &[u8]) {
@@ -17,3 +18,14 @@ fn the_sample_prints_without_a_warning() {
     assert!(printed.pages > 8, "{}", printed.pages);
 }
 
+
+#[test]
+fn a_working_of_the_program_prints() {
+    let member = real::propped();
+    let mut model = sample::model();
+    let working = real::working(&member);
+    model.chapters = proofspan::sheet::model::chapters(&working, &Templates::default().labels().unwrap()).unwrap();
+    let printed = print(&model, &sample::options()).unwrap_or_else(|fault| panic!("{fault}"));
+    leave("real.pdf", &printed.pdf);
+    assert_eq!(printed.warnings, Vec::<String>::new());
+}

@@ -118,7 +118,7 @@ pub fn aligned(figures: &[Decimal]) -> Vec<Cell> {
     let texts: Vec<String> = figures.iter().map(|figure| typeset::figure(*figure)).collect();
     // A power of ten has no decimals to align.
     let tail = |text: &str| {
-        if text.contains('×') {
+        if text.contains('·') {
             return 0.0;
         }
         text.split_once('.').map_or(0.0, |(_, decimals)| text_width(".", Face::Regular, 1.0) + text_width(decimals, Face::Regular, 1.0))
@@ -171,7 +171,7 @@ impl Table {
         let share = (page::COLUMN - used) / self.columns.len().max(1) as f64;
         if fixed && share > 0.0 {
             for column in &mut self.columns {
-                column.width = ((column.width + share.min(8.0)) * 10.0).floor() / 10.0;
+                column.width = page::tenth(column.width + share.min(8.0) - 0.05);
             }
         }
     }
