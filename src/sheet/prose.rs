@@ -1,5 +1,7 @@
 //! Text as Typst code: string literals, and prose in which `v_C` is a symbol.
 
+use super::typeset::superscript;
+
 /// A Typst string literal that stands for exactly these characters.
 pub fn literal(text: &str) -> String {
     let mut out = String::with_capacity(text.len() + 2);
@@ -56,6 +58,12 @@ pub fn prose(text: &str) -> String {
             rest = after;
             continue;
         }
+        if let (true, Some((power, after))) = (before.is_alphabetic(), raised(rest)) {
+            plain.push_str(&power);
+            before = '0';
+            rest = after;
+            continue;
+        }
         plain.push(first);
         before = first;
         rest = rest.get(first.len_utf8()..).unwrap_or_default();
@@ -98,6 +106,14 @@ fn in_word(character: char) -> bool {
     character.is_alphanumeric() || character == '_'
 }
 
+/// A power at the start of a text, `^2`, as a raised figure, and what follows.
+fn raised(text: &str) -> Option<(String, &str)> {
+    let rest = text.strip_prefix('^')?;
+    let end = rest.find(|c: char| !c.is_ascii_digit()).unwrap_or(rest.len());
+    let (digits, after) = rest.split_at(end);
+    (!digits.is_empty()).then(|| (digits.chars().map(superscript).collect(), after))
+}
+
 /// A symbol at the start of a text: its letters, its subscript, what follows.
 fn symbol(text: &str) -> Option<(&str, String, &str)> {
     let end = text.find(|c: char| !c.is_ascii_alphanumeric() && c != '_').unwrap_or(text.len());
@@ -134,6 +150,7 @@ mod tests {
         assert_eq!(prose("A beam at A_b?"), "{\"A beam at \";emph(\"A\");sub(\"b\");\"?\"}");
         assert_eq!(prose("EI_1 and psi_C_G"), "{emph(\"EI\");sub(\"1\");\" and \";emph(\"ψ\");sub(\"C,G\")}");
         assert_eq!(prose("file_name_b and Beam_3"), "\"file_name_b and Beam_3\"");
+        assert_eq!(prose("1 kN/m^2 at x^y"), "\"1 kN/m² at x^y\"");
         assert_eq!(prose(""), "\"\"");
     }
 }

@@ -80,7 +80,8 @@ fn raised(text: &str, power: u8) -> String {
     format!("{text}{digits}")
 }
 
-const fn superscript(character: char) -> char {
+/// A digit or minus raised; any other character as it is.
+pub(super) const fn superscript(character: char) -> char {
     match character {
         '0' => '⁰',
         '1' => '¹',

@@ -28,8 +28,14 @@ pub struct Line {
     pub bold: bool,
     /// Whether the widest part of an equation is wider than the column and must be made smaller.
     pub shrink: bool,
-    /// Side notes, prose: what it finds, on what it rests, where its figures come from.
-    pub notes: Vec<String>,
+    /// Side note, prose: what it finds; empty where it is stated.
+    pub title: String,
+    /// Side note, prose: on what it rests; may be empty.
+    pub basis: String,
+    /// Side note, prose: where its figures come from; may be empty.
+    pub origins: String,
+    /// How far below the top of the line its number and notes stand, mm: a fraction's line lies lower.
+    pub drop: f64,
     /// White below, mm, so that the side notes end before the next line's.
     pub room: f64,
 }
@@ -80,8 +86,11 @@ pub fn line(
     let shrink = wide(&symbols) || numbers.as_ref().is_some_and(wide);
     let stated = setting == Setting::Stated;
     let title = if stated { "" } else { step.title.as_str() };
-    let notes: Vec<String> =
-        [title, basis].into_iter().map(str::to_owned).chain(origins).filter(|note| !note.is_empty()).collect();
+    let drop = match setting {
+        Setting::Row if numbers.as_ref().is_some_and(Equation::is_tall) || symbols.is_tall() => 2.6,
+        Setting::Below | Setting::Full if symbols.is_tall() => 2.6,
+        _ => 0.5,
+    };
     let mut line = Line {
         id: if several { step.id.clone() } else { String::new() },
         setting,
@@ -91,7 +100,10 @@ pub fn line(
         result: format!("= {result}"),
         bold: step.bold,
         shrink,
-        notes,
+        title: title.to_owned(),
+        basis: basis.to_owned(),
+        origins: origins.unwrap_or_default(),
+        drop,
         room: 0.0,
     };
     line.room = room(&line);
@@ -150,7 +162,8 @@ pub fn spoken(numbers: &str) -> String {
 
 /// White that the side notes of a line need below what stands beside them.
 fn room(line: &Line) -> f64 {
-    let notes: f64 = line.notes.iter().map(|note| page::lines(note, page::NOTES, page::NOTE_PT)).sum();
+    let texts = [&line.title, &line.basis, &line.origins].into_iter().filter(|text| !text.is_empty());
+    let notes: f64 = texts.map(|text| page::lines(text, page::NOTES, page::NOTE_PT)).sum();
     let high = |equation: &Equation| -> f64 { if equation.is_tall() { 7.5 } else { 3.2 } };
     let numbers = line.numbers.as_ref().map_or(0.0, high);
     let beside = match line.setting {
@@ -158,7 +171,7 @@ fn room(line: &Line) -> f64 {
         Setting::Below | Setting::Full => high(&line.symbols) + numbers + 2.9,
     };
     // The gap to the next line is white too.
-    page::tenth((notes * page::NOTE_LINE - beside - page::LINE_GAP + 1.0).max(0.0))
+    page::tenth((notes * page::NOTE_LINE + line.drop - beside - page::LINE_GAP + 2.0).max(0.0))
 }
 
 #[cfg(test)]

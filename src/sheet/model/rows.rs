@@ -69,7 +69,7 @@ fn inputs(steps: &[&working::Step], room: f64) -> Option<Inputs> {
         }
         let same_name = inputs.iter().all(|input| input.name == head.name);
         if same_name && inputs.iter().all(|input| input.printed == head.printed) {
-            found.shared.push(format!("{} = {}", head.name, typeset::quantity(head.printed, &head.unit)));
+            found.shared.push(format!("{}\u{A0}=\u{A0}{}", head.name, typeset::quantity(head.printed, &head.unit)));
             continue;
         }
         // Where the rows name it differently the column bears the letter they have in common.

@@ -127,7 +127,7 @@ impl Reader<'_> {
             if own || !self.is_recalled(home.0) {
                 continue;
             }
-            let figure = format!("{} = {}", input.name, typeset::quantity(input.printed, &input.unit));
+            let figure = format!("{}\u{A0}=\u{A0}{}", input.name, typeset::quantity(input.printed, &input.unit));
             match from.iter_mut().find(|(known, _)| known == home) {
                 Some((_, figures)) if figures.iter().any(|(known, _)| *known == index) => {}
                 Some((_, figures)) => figures.push((index, figure)),
