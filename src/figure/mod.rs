@@ -26,6 +26,7 @@ pub use bodies::free_bodies;
 pub use collide::{Collision, CollisionKind};
 pub use elevation::elevation;
 pub use hatch::hatch_lines;
+pub use load_words::describe;
 pub use loads::loads;
 pub use method::{chained, signs};
 pub use plot::{Chord, Curve, Mark, Panel, Plot, Style, diagrams};

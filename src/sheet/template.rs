@@ -174,6 +174,11 @@ impl Labels {
         found.as_str().ok_or_else(missing)
     }
 
+    /// A word by its path, with `{}` in it replaced.
+    pub fn with(&self, path: &str, value: &str) -> Result<String, Fault> {
+        Ok(self.get(path)?.replace("{}", value))
+    }
+
     /// A list of words by its path: `months`.
     pub fn list(&self, path: &str) -> Result<Vec<String>, Fault> {
         let missing = || Fault::Labels { message: format!("there is no list of labels {path}") };

@@ -3,7 +3,7 @@
 mod real;
 mod sample;
 
-use proofspan::sheet::{Templates, print};
+use proofspan::sheet::print;
 
 /// Where a test leaves a PDF to be looked at.
 fn leave(name: &str, pdf: &[u8]) {
@@ -20,12 +20,8 @@ fn the_sample_prints_without_a_warning() {
 
 
 #[test]
-fn a_working_of_the_program_prints() {
-    let member = real::propped();
-    let mut model = sample::model();
-    let working = real::working(&member);
-    model.chapters = proofspan::sheet::model::chapters(&working, &Templates::default().labels().unwrap()).unwrap();
-    let printed = print(&model, &sample::options()).unwrap_or_else(|fault| panic!("{fault}"));
+fn a_composed_sheet_prints() {
+    let printed = print(&real::model(&real::propped()), &sample::options()).unwrap_or_else(|fault| panic!("{fault}"));
     leave("real.pdf", &printed.pdf);
     assert_eq!(printed.warnings, Vec::<String>::new());
 }

@@ -3,6 +3,9 @@
 use proofspan::analysis;
 use proofspan::member::*;
 use proofspan::quantity::Decimal;
+use proofspan::figure::{Cut, Plot, Words};
+use proofspan::sheet::model::{Findings, Parts};
+use proofspan::sheet::{Model, Templates};
 use proofspan::working::{Demand, Working, narrate};
 
 use crate::figure::build;
@@ -94,4 +97,53 @@ pub fn working(member: &Member) -> Working {
         }
     }
     narrate(member, &analysis, &demands).unwrap_or_else(|faults| panic!("{faults:?}"))
+}
+
+/// The whole sheet of a member.
+pub fn model(member: &Member) -> Model {
+    let working = working(member);
+    let words = Words { cuts: vec![Cut { at: 4.0, name: "C".to_owned() }], ..Words::default() };
+    let findings = Findings {
+        verdict: [
+            "Deflection: within limits, 0.82 of the allowable (C1, span A–B).".to_owned(),
+            "Strength: not checked.".to_owned(),
+        ],
+        uplift: vec!["Support B: net uplift of 14.1 kN in combination C4; hold-down required.".to_owned()],
+        program: vec![format!("{} significant figures carried.", working.figures)],
+        hashes: vec![("deck.toml".to_owned(), "0123456789abcdef".repeat(4))],
+        plots: vec![("Combination C1".to_owned(), plot())],
+        ..Findings::default()
+    };
+    let labels = Templates::default().labels().unwrap();
+    Model::compose(&Parts {
+        member,
+        redundants: &[Redundant::Force(1)],
+        working: &working,
+        words: &words,
+        findings: &findings,
+        file: "intake.toml",
+        deck: super::sample::DECK,
+        labels: &labels,
+    })
+    .unwrap_or_else(|fault| panic!("{fault}"))
+}
+
+fn plot() -> Plot {
+    use proofspan::figure::{Curve, Mark, Panel, Style};
+    let panel = |symbol: &str, unit: &str, down: bool, value: fn(f64) -> f64| {
+        let points: Vec<(f64, f64)> = (0..=90).map(|i| (f64::from(i) / 10.0, value(f64::from(i) / 10.0))).collect();
+        let curves = vec![Curve { label: "C1".to_owned(), style: Style::Line(0), points, marks: Vec::<Mark>::new() }];
+        Panel { symbol: symbol.to_owned(), unit: unit.to_owned(), down, curves, ..Panel::default() }
+    };
+    Plot {
+        subject: "Combination C1".to_owned(),
+        from: 0.0,
+        to: 9.0,
+        supports: vec![(0.0, "A".to_owned()), (9.0, "B".to_owned())],
+        panels: vec![
+            panel("V", "kN", false, |x| 100.0 - 20.0 * x),
+            panel("M", "kN m", true, |x| -200.0 + 100.0 * x - 10.0 * x * x),
+            panel("v", "mm", true, |x| x * x * (9.0 - x) / 5.0),
+        ],
+    }
 }

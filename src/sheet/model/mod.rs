@@ -4,11 +4,14 @@
 //! whatever characters it holds; only an [`Equation`] is read as mathematics, and it was checked when it was made.
 //! In a field called "prose" below, a letter with a subscript written `v_C` or `psi_B` is set as a symbol.
 
+mod compose;
+mod given;
 mod line;
 mod rows;
 mod step;
 mod table;
 
+pub use compose::{Findings, Parts};
 pub use line::{Line, Setting};
 pub use step::{Chapter, Step, chapters};
 pub use table::{Align, Cell, Column, Row, Table, aligned};
