@@ -138,7 +138,10 @@ struct Token {
 /// The pieces of an equation; brackets wider than `room` ems fall apart into theirs.
 fn flatten(node: &SyntaxNode, room: f64, out: &mut Vec<Token>) {
     for child in node.children() {
-        let width = Measure::of(child, Level::Display).total;
+        // Measured behind an operand: a sign that turns out to stand alone takes less.
+        let mut measure = Measure { total: 0.0, operand: true };
+        measure.add(child, Level::Display);
+        let width = measure.total;
         let opens = matches!(child.kind(), SyntaxKind::MathDelimited | SyntaxKind::Math);
         if opens && width > room {
             flatten(child, room, out);
@@ -186,10 +189,11 @@ fn fitting(tokens: &[Token], room: f64) -> usize {
     tokens.len()
 }
 
-/// Width in ems.
+/// Width in ems, and whether an operand stands last: a sign behind it has white on both sides, any other has none.
 #[derive(Clone, Debug, Default)]
 struct Measure {
     total: f64,
+    operand: bool,
 }
 
 impl Measure {
@@ -201,6 +205,12 @@ impl Measure {
 
     fn solid(&mut self, width: f64) {
         self.total += width;
+        self.operand = true;
+    }
+
+    fn sign(&mut self, width: f64, white: f64) {
+        self.total += if self.operand { width + white } else { width };
+        self.operand = false;
     }
 
     fn add(&mut self, node: &SyntaxNode, level: Level) {
@@ -218,11 +228,13 @@ impl Measure {
                     self.solid(Self::of(base, level).total);
                 }
                 let scripts = children.filter(|child| !matches!(child.kind(), K::Hat | K::Underscore));
-                self.solid(scripts.map(|script| Self::of(script, Level::Script).total).sum::<f64>() + 0.06);
+                self.solid(scripts.map(script).sum::<f64>() + 0.06);
             }
             K::MathDelimited => {
-                let inner: f64 = node.children().map(|child| Self::of(child, level).total).sum();
-                self.solid(inner);
+                let mut inner = Self::default();
+                node.children().for_each(|child| inner.add(child, level));
+                // Brackets around a fraction are drawn larger.
+                self.solid(inner.total + if has_fraction(node) { 0.45 } else { 0.0 });
             }
             K::Space => {}
             K::Str => self.solid(literal(node.leaf_text().trim_matches('"')) * level.scale()),
@@ -245,20 +257,33 @@ impl Measure {
             let widest = parts.map(|part| Self::of(part, level.inside()).total).fold(0.0, f64::max);
             return self.solid(widest + 0.25);
         }
-        let inner: f64 = parts.map(|part| Self::of(part, level).total + 0.5).sum();
+        let inner: f64 = parts.map(|part| Self::of(part, level).total).sum();
         let name = match callee(node) {
-            Some(word @ ("min" | "max")) => literal(word) + 0.8,
-            _ => 0.7,
+            Some(word @ ("min" | "max")) => literal(word) + 1.6,
+            _ => 0.6,
         };
-        self.solid((name + inner) * level.scale());
+        self.solid(name * level.scale() + inner);
     }
 
     fn leaf(&mut self, text: &str, level: Level) {
         let scale = level.scale();
         let spaced = if level == Level::Script { 0.0 } else { 1.0 };
         match text {
-            "+" | "-" | "times" | "dot" | "minus" | "plus" => self.solid((0.778 + 0.444 * spaced) * scale),
-            "=" | "<" | ">" | "<=" | ">=" | "approx" => self.solid((0.778 + 0.556 * spaced) * scale),
+            "+" | "-" | "times" | "minus" | "plus" => self.sign(0.778 * scale, 0.444 * spaced),
+            "dot" => self.sign(0.278 * scale, 0.444 * spaced),
+            "=" | "<" | ">" | "<=" | ">=" | "approx" => {
+                self.solid((0.778 + 0.278 * spaced) * scale);
+                // At the start of a line there is nothing to keep clear of on its left.
+                if self.total > scale * 1.06 {
+                    self.total += 0.278 * spaced * scale;
+                }
+                self.operand = false;
+            }
+            "(" | "[" => {
+                self.solid(0.389 * scale);
+                self.operand = false;
+            }
+            ")" | "]" => self.solid(0.389 * scale),
             "," => self.solid((0.28 + 0.17 * spaced) * scale),
             "thin" => self.solid(0.17),
             "med" => self.solid(0.23),
@@ -269,6 +294,12 @@ impl Measure {
             _ => self.solid(text.chars().next().map_or(0.0, |c| letter(text, c)) * scale),
         }
     }
+}
+
+/// Width of a subscript or power; brackets that only hold it together are not set.
+fn script(node: &SyntaxNode) -> f64 {
+    let width = Measure::of(node, Level::Script).total;
+    if node.kind() == SyntaxKind::MathDelimited { width - 2.0 * 0.389 * Level::Script.scale() } else { width }
 }
 
 fn literal(text: &str) -> f64 {

@@ -20,5 +20,5 @@ pub use fault::Fault;
 pub use fonts::{Face, missing_glyph, text_width};
 pub use model::Model;
 pub use page::Paper;
-pub use print::{Attachments, Options, Printed, print, render};
+pub use print::{Attachments, Options, Printed, print, render, text};
 pub use template::{Labels, Templates};

@@ -8,6 +8,8 @@ use super::fonts::{Face, text_width};
 pub const COLUMN: f64 = 120.0;
 /// Within it, where numbers put in begin.
 pub const SYMBOLS: f64 = 54.0;
+/// Width of the symbol of a stated figure, before its words.
+pub const SYMBOL: f64 = 20.0;
 /// White kept between neighbours.
 pub const GAP: f64 = 3.0;
 /// How far a continued line stands in.

@@ -4,6 +4,7 @@ use minijinja::value::{Serde, Value};
 use serde::Serialize;
 use typst::diag::{SourceDiagnostic, Warned};
 use typst::foundations::{Bytes, Dict, Smart, Value as Data};
+use typst::layout::{Frame, FrameItem};
 use typst::syntax::DiagSpanKind;
 use typst::WorldExt;
 use typst_layout::PagedDocument;
@@ -80,6 +81,56 @@ pub fn render(model: &Model, options: &Options) -> Result<Vec<u8>, Fault> {
 ///
 /// As [`render`].
 pub fn print(model: &Model, options: &Options) -> Result<Printed, Fault> {
+    within(model, options, |world, document, warnings| {
+        let standards = PdfStandards::new(&[PdfStandard::A_3a, PdfStandard::Ua_1])
+            .map_err(|error| Fault::Setting { place: None, message: error.message().to_string() })?;
+        let pdf_options = PdfOptions {
+            ident: Smart::Custom(options.ident.clone()),
+            creator: Smart::Custom(Some(concat!("Proofspan ", env!("CARGO_PKG_VERSION")).to_owned())),
+            standards,
+            ..PdfOptions::default()
+        };
+        let pdf = typst_pdf::pdf(document, &pdf_options).map_err(|errors| first(world, &errors))?;
+        Ok(Printed { pdf, pages: document.pages().len(), warnings })
+    })
+}
+
+/// The text of every page, in the order set, equations included glyph by glyph; what a reader's eye meets, for tests and
+/// for searching.
+///
+/// # Errors
+///
+/// As [`render`], but for what only the writing of a PDF finds.
+pub fn text(model: &Model, options: &Options) -> Result<Vec<String>, Fault> {
+    within(model, options, |_, document, _| {
+        let page = |frame: &Frame| {
+            let mut out = String::new();
+            collect(frame, &mut out);
+            out
+        };
+        Ok(document.pages().iter().map(|one| page(&one.frame)).collect())
+    })
+}
+
+fn collect(frame: &Frame, out: &mut String) {
+    for (_, item) in frame.items() {
+        match item {
+            FrameItem::Text(text) => {
+                out.push_str(&text.text);
+                out.push(' ');
+            }
+            FrameItem::Group(group) => collect(&group.frame, out),
+            _ => {}
+        }
+    }
+}
+
+/// Sets a sheet and hands it on.
+fn within<T>(
+    model: &Model,
+    options: &Options,
+    then: impl FnOnce(&Closed, &PagedDocument, Vec<String>) -> Result<T, Fault>,
+) -> Result<T, Fault> {
     let view = Value::from(Serde(model));
     if let Some((character, place)) = unprintable(&view, String::new()) {
         return Err(Fault::Glyph { character, place });
@@ -94,29 +145,15 @@ pub fn print(model: &Model, options: &Options) -> Result<Printed, Fault> {
         attachments => Value::from(Serde(attached(&options.attachments))),
         language => options.language.clone(),
     };
-    let text = options.templates.fill(model, extra)?;
+    let text = options.templates.fill(&view, &model.drawings, extra)?;
     let world = Closed::new(text, &options.templates.modules(), inputs(&options.attachments))
         .ok_or_else(|| Fault::Setting { place: None, message: "a template's name is no path".to_owned() })?;
-    let printed = set(&world, options);
+    let Warned { output, warnings } = typst::compile::<PagedDocument>(&world);
+    let warnings = warnings.iter().map(|warning| said(&world, warning).to_string()).collect();
+    let result = output.map_err(|errors| first(&world, &errors)).and_then(|document| then(&world, &document, warnings));
     // Without this a long run would keep every document it has ever set.
     comemo::evict(0);
-    printed
-}
-
-fn set(world: &Closed, options: &Options) -> Result<Printed, Fault> {
-    let Warned { output, warnings } = typst::compile::<PagedDocument>(world);
-    let document = output.map_err(|errors| first(world, &errors))?;
-    let standards = PdfStandards::new(&[PdfStandard::A_3a, PdfStandard::Ua_1])
-        .map_err(|error| Fault::Setting { place: None, message: error.message().to_string() })?;
-    let pdf_options = PdfOptions {
-        ident: Smart::Custom(options.ident.clone()),
-        creator: Smart::Custom(Some(concat!("Proofspan ", env!("CARGO_PKG_VERSION")).to_owned())),
-        standards,
-        ..PdfOptions::default()
-    };
-    let pdf = typst_pdf::pdf(&document, &pdf_options).map_err(|errors| first(world, &errors))?;
-    let warnings = warnings.iter().map(|warning| said(world, warning).to_string()).collect();
-    Ok(Printed { pdf, pages: document.pages().len(), warnings })
+    result
 }
 
 fn first(world: &Closed, errors: &[SourceDiagnostic]) -> Fault {

@@ -1,24 +1,65 @@
 //! Text as Typst code: string literals, and prose in which `v_C` is a symbol.
 
+use super::fonts::{Face, text_width};
 use super::typeset::superscript;
 
-/// A Typst string literal that stands for exactly these characters.
+/// The longest word that is never divided, in characters: 35 mm of the smallest text hold it.
+const LONGEST: usize = 24;
+/// Where a longer word may be divided: after every so many characters.
+const PIECE: usize = 8;
+
+/// A Typst string literal that stands for exactly these characters; a word too long for a column may be divided, which
+/// adds zero-width spaces that neither print nor separate.
 pub fn literal(text: &str) -> String {
     let mut out = String::with_capacity(text.len() + 2);
     out.push('"');
-    for character in text.chars() {
-        match character {
-            '"' => out.push_str("\\\""),
-            '\\' => out.push_str("\\\\"),
-            '\n' => out.push_str("\\n"),
-            '\r' => out.push_str("\\r"),
-            '\t' => out.push_str("\\t"),
-            other if other.is_control() => out.push_str(&format!("\\u{{{:x}}}", u32::from(other))),
-            other => out.push(other),
+    let mut words = text.split_inclusive(|c: char| c.is_whitespace() && c != '\u{A0}' && c != '\u{202F}');
+    for word in &mut words {
+        let long = word.chars().count() > LONGEST;
+        for (index, character) in word.chars().enumerate() {
+            if long && index > 0 && index.is_multiple_of(PIECE) && !combines(character) {
+                out.push_str("\\u{200b}");
+            }
+            write(character, &mut out);
         }
     }
     out.push('"');
     out
+}
+
+/// Whether a character is drawn on the one before it, as accents are.
+const fn combines(character: char) -> bool {
+    matches!(character, '\u{300}'..='\u{36F}' | '\u{483}'..='\u{489}' | '\u{591}'..='\u{5C7}' | '\u{64B}'..='\u{65F}' | '\u{20D0}'..='\u{20FF}')
+}
+
+fn write(character: char, out: &mut String) {
+    match character {
+        '"' => out.push_str("\\\""),
+        '\\' => out.push_str("\\\\"),
+        '\n' => out.push_str("\\n"),
+        '\r' => out.push_str("\\r"),
+        '\t' => out.push_str("\\t"),
+        other if other.is_control() => out.push_str(&format!("\\u{{{:x}}}", u32::from(other))),
+        other => out.push(other),
+    }
+}
+
+/// A text cut to a width in mm at a size in pt, with an ellipsis where something is missing.
+pub fn short(text: &str, width: f64, size_pt: f64) -> String {
+    let room = width - text_width("…", Face::Regular, size_pt);
+    if text_width(text, Face::Regular, size_pt) <= width {
+        return text.to_owned();
+    }
+    let mut kept = String::new();
+    let mut used = 0.0;
+    for character in text.chars() {
+        used += text_width(character.encode_utf8(&mut [0; 4]), Face::Regular, size_pt);
+        if used > room {
+            break;
+        }
+        kept.push(character);
+    }
+    format!("{}…", kept.trim_end())
 }
 
 /// Words that stand for Greek letters.
@@ -137,12 +178,21 @@ fn symbol(text: &str) -> Option<(&str, String, &str)> {
 
 #[cfg(test)]
 mod tests {
-    use super::{literal, prose};
+    use super::{literal, prose, short};
 
     #[test]
     fn a_literal_ends_where_its_text_ends() {
         assert_eq!(literal("a\"b\\c\n#d"), "\"a\\\"b\\\\c\\n#d\"");
         assert_eq!(literal("\u{1b}"), "\"\\u{1b}\"");
+        assert_eq!(literal(&"a".repeat(24)), format!("\"{}\"", "a".repeat(24)));
+        assert_eq!(literal(&"a".repeat(25)).matches("\\u{200b}").count(), 3);
+    }
+
+    #[test]
+    fn a_running_head_is_cut_to_its_width() {
+        assert_eq!(short("Intake beam B3", 60.0, 9.0), "Intake beam B3");
+        let cut = short(&"wide ".repeat(40), 60.0, 9.0);
+        assert!(cut.ends_with('…') && cut.chars().count() < 50, "{cut}");
     }
 
     #[test]

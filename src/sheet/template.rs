@@ -7,8 +7,8 @@ use minijinja::syntax::SyntaxConfig;
 use minijinja::{AutoEscape, Environment, Error, ErrorKind, Output, State, UndefinedBehavior};
 
 use super::drawing::{self, plain};
-use super::prose::{literal, prose};
-use super::{Equation, Fault, Model};
+use super::prose::{literal, prose, short};
+use super::{Equation, Fault};
 use crate::figure::Drawing;
 
 /// The file that includes the others.
@@ -17,6 +17,9 @@ const MAIN: &str = "sheet.typ.j2";
 const LABELS: &str = "labels.toml";
 /// The module of Typst functions that the templates call.
 const STYLE: &str = "style.typ";
+
+/// Size of running heads, for cutting them.
+const HEAD_PT: f64 = 9.0;
 
 macro_rules! embedded {
     ($($name:literal),* $(,)?) => {
@@ -80,7 +83,7 @@ impl Templates {
     }
 
     /// Puts the sheet together.
-    pub(super) fn fill(&self, model: &Model, extra: Value) -> Result<String, Fault> {
+    pub(super) fn fill(&self, view: &Value, drawings: &[Drawing], extra: Value) -> Result<String, Fault> {
         let mut environment = Environment::new();
         environment.set_undefined_behavior(UndefinedBehavior::Strict);
         environment.set_auto_escape_callback(|_| AutoEscape::Custom("typst".into()));
@@ -94,6 +97,7 @@ impl Templates {
             environment.remove_filter(name);
         }
         environment.add_filter("prose", |text: &str| code(prose(text)));
+        environment.add_filter("short", |text: &str, width: f64| short(text, width, HEAD_PT));
         environment.add_filter("mm", |value: f64| code(format!("{}mm", plain(value))));
         environment.add_filter("em", |value: f64| code(format!("{}em", plain(value))));
         environment.add_filter("count", |value: i64| code(value.to_string()));
@@ -101,19 +105,15 @@ impl Templates {
         environment.add_filter("word", |text: &str| code(text.chars().filter(char::is_ascii_alphabetic).collect()));
         environment.add_filter("flag", |value: bool| code(value.to_string()));
         environment.add_filter("math", math);
-        let drawings = drawn(&model.drawings);
+        let drawings: Vec<String> = drawings.iter().map(drawing::code).collect();
         environment.add_filter("picture", move |index: usize| {
             let text = drawings.get(index).cloned().map(code);
             text.ok_or_else(|| Error::new(ErrorKind::InvalidOperation, format!("there is no drawing {index}")))
         });
-        let context = minijinja::context! { ..extra, ..Value::from(Serde(model)) };
+        let context = minijinja::context! { ..extra, ..view.clone() };
         let template = environment.get_template(MAIN).map_err(fault)?;
         template.render(context).map_err(fault)
     }
-}
-
-fn drawn(drawings: &[Drawing]) -> Vec<String> {
-    drawings.iter().map(drawing::code).collect()
 }
 
 /// Typst code made by this program. The mark that minijinja calls safe has no other source here: the filters by which a

@@ -78,3 +78,72 @@ impl World for Closed {
         None
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use typst::diag::Warned;
+    use typst::foundations::Dict;
+    use typst_layout::PagedDocument;
+
+    use super::Closed;
+    use crate::sheet::{Equation, Templates};
+
+    /// What the compiler says of a text that cannot be compiled.
+    fn refusal(main: &str) -> String {
+        let world = Closed::new(main.to_owned(), &Templates::default().modules(), Dict::new()).unwrap();
+        let Warned { output, .. } = typst::compile::<PagedDocument>(&world);
+        output.map_or_else(|errors| errors[0].message.to_string(), |_| String::new())
+    }
+
+    #[test]
+    fn nothing_outside_is_read() {
+        for main in [
+            "#read(\"/etc/passwd\")",
+            "#read(\"style.typ\")",
+            "#read(\"../Cargo.toml\")",
+            "#include \"other.typ\"",
+            "#import \"../style.typ\": *",
+            "#image(\"a.png\")",
+            "#json(\"a.json\")",
+            "#plugin(\"a.wasm\")",
+            "#bibliography(\"a.bib\")",
+            "#import \"@preview/example:0.1.0\": *",
+            "#set raw(theme: \"a.tmTheme\"); #raw(lang: \"rust\", \"a\")",
+            "#eval(\"read(\\\"a\\\")\")",
+        ] {
+            let said = refusal(main);
+            assert!(said.contains("denied") || said.contains("escape") || said.contains("cannot"), "{main}: {said}");
+        }
+        let today = refusal("#datetime.today()");
+        assert!(today.contains("unable to get the current date"), "{today}");
+    }
+
+    /// The estimate decides what stands on one line, so it must not be short by more than a hair, nor far too long.
+    #[test]
+    fn estimated_widths_are_those_of_the_compiler() {
+        let sources = [
+            r#"R_"A" = R_"A" + R_"B" R_"A,1""#,
+            r#"delta_"AC" = frac(V_"Cr" L_"1"^3, 3 E I_"deep") - frac(M_"Cr" L_"1"^2, 2 E I_"deep") + frac(w_"1" L_"1"^4, 8 E I_"deep")"#,
+            r#"= -(-9.40811) times 2.7981324 - frac((-3.5) times 2.7981324^2, 2) - (-7.5)"#,
+            r#"= -2.0476 dot 10^(-4) + (-1.99990 dot 10^(-4)) times 2.2018676 + (3.714 dot 10^(-5))"#,
+            r#"m_"A" = frac(L_"1" (w_"2" L_"1" + w_"3" 2 L_"1"), 6) + M_"1" + w_"4" L_"2" (L_"1" + frac(L_"2", 2)) + M_"2""#,
+            r#"u_"1" = frac(abs(v_"s1"), v_"a1")"#,
+            r#"= min(frac(9 times 1 thin 000, 250), 20.0)"#,
+            r#"psi_"Cl" = gamma_"C1_Q" psi_"Cl,Q" + gamma_"C1_W" psi_"Cl,W""#,
+            "= frac(14.00 times 4.000^4, 8 times 41 thin 200)",
+            "x",
+        ];
+        let list: Vec<String> = sources.iter().map(|source| format!("eq(\"a\", ${source}$)")).collect();
+        let said = refusal(&format!(
+            "#import \"style.typ\": *\n#show: sheet.with(title: \"a\", date: datetime(year: 2026, month: 1, day: 1))\n\
+             #context panic(({}).map(e => str(measure(e).width / 1mm)).join(\" \"))",
+            list.join(", ")
+        ));
+        let found: Vec<f64> = said.split(['"', ' ']).filter_map(|word| word.parse().ok()).collect();
+        assert_eq!(found.len(), sources.len(), "{said}");
+        for (source, found) in sources.iter().zip(found) {
+            let estimate = Equation::new(*source, "").unwrap().width(10.0);
+            assert!(estimate > 0.99 * found - 0.1 && estimate < 1.10 * found + 1.5, "{found} {estimate}: {source}");
+        }
+    }
+}

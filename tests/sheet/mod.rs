@@ -1,5 +1,6 @@
 //! The sheet: printed, read back, and made to hold hostile text.
 
+mod hostile;
 mod real;
 mod sample;
 

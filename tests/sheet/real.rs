@@ -101,7 +101,15 @@ pub fn working(member: &Member) -> Working {
 
 /// The whole sheet of a member.
 pub fn model(member: &Member) -> Model {
-    let working = working(member);
+    composed(member, &working(member))
+}
+
+/// The sheet of a member without its steps.
+pub fn model_without_working(member: &Member) -> Model {
+    composed(member, &Working { figures: 4, settled: true, steps: Vec::new(), chapters: Vec::new() })
+}
+
+fn composed(member: &Member, working: &Working) -> Model {
     let words = Words { cuts: vec![Cut { at: 4.0, name: "C".to_owned() }], ..Words::default() };
     let findings = Findings {
         verdict: [
@@ -118,7 +126,7 @@ pub fn model(member: &Member) -> Model {
     Model::compose(&Parts {
         member,
         redundants: &[Redundant::Force(1)],
-        working: &working,
+        working,
         words: &words,
         findings: &findings,
         file: "intake.toml",

@@ -83,7 +83,9 @@ pub fn line(
     let end = text_width("= ", face, page::TEXT_PT) + text_width(&result, face, page::TEXT_PT);
     let stated = repeats && (step.math.is_empty() || step.math == step.math_symbol);
     let setting = if stated { Setting::Stated } else { setting(&symbols, numbers.as_ref(), end) };
-    let (title, words) = if stated { ("", step.title.as_str()) } else { (step.title.as_str(), "") };
+    let beside = text_width(&step.title, Face::Regular, page::TABLE_PT) + page::SYMBOL + page::GAP + end <= page::COLUMN;
+    let inside = stated && beside && symbols.width(page::TEXT_PT) < page::SYMBOL;
+    let (title, words) = if inside { ("", step.title.as_str()) } else { (step.title.as_str(), "") };
     let mut line = Line {
         id: if several { step.id.clone() } else { String::new() },
         setting,
