@@ -36,7 +36,8 @@ pub fn elevation(member: &Member, said: &Words, width: f64) -> Drawing {
     let above = segment_notes(member, said, scale, &depths);
     annotate(&mut canvas, &above, Layer { edge: top - 0.5, up: true, left: 0.0, right: width, beside: false });
     let below = name_notes(member, said, scale, &depths, |_| String::new());
-    let low = annotate(&mut canvas, &below, Layer { edge: low + 0.2, up: false, left: 0.0, right: width, beside: false });
+    let low =
+        annotate(&mut canvas, &below, Layer { edge: low + 0.2, up: false, left: 0.0, right: width, beside: false });
     let low = dimensions(&mut canvas, member, scale, low, width);
     let note = scale_note(depths.factor);
     canvas.text(at(LEFT, low + 1.2 + ROW), Anchor::Start, vec![plain(note.clone())]);
@@ -172,14 +173,7 @@ pub fn between(places: &[Place], member: &Member) -> Vec<Vec<Run>> {
 }
 
 /// A chain through places along the member.
-pub fn chain_of(
-    canvas: &mut Canvas,
-    places: &[Place],
-    labels: Vec<Vec<Run>>,
-    scale: Scale,
-    y: f64,
-    width: f64,
-) -> f64 {
+pub fn chain_of(canvas: &mut Canvas, places: &[Place], labels: Vec<Vec<Run>>, scale: Scale, y: f64, width: f64) -> f64 {
     let ticks: Vec<f64> = places.iter().map(|place| scale.x(place.x())).collect();
     chain(canvas, y, &ticks, labels, 0.0, width)
 }

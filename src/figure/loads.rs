@@ -133,11 +133,8 @@ impl Sketch<'_> {
 
     fn point_loads(&self, canvas: &mut Canvas, placed: &[Placed], base: f64) {
         let highest = canvas.extent().map_or(base, |extent| extent.top.min(base));
-        let away: Vec<Note> = placed
-            .iter()
-            .flat_map(Placed::away)
-            .map(|(x, line, runs)| Note { x, start: Some(line), runs })
-            .collect();
+        let away: Vec<Note> =
+            placed.iter().flat_map(Placed::away).map(|(x, line, runs)| Note { x, start: Some(line), runs }).collect();
         let mut notes: Vec<Note> = away;
         let mut tail = base;
         for (place, _) in self.points() {
@@ -288,4 +285,3 @@ fn alt(member: &Member, case: Option<&Case>, said: &Words) -> String {
     let total = if said.total.is_empty() { String::new() } else { format!(" {}", said.total) };
     format!("Load case {}{title}, on the member: {}.{total}", case.name, loads.join("; "))
 }
-

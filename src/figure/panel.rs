@@ -67,8 +67,7 @@ pub fn panel(canvas: &mut Canvas, panel: &Panel, plot: &Plot, frame: Frame, top:
     }
     let mut named = chords(&mut own, panel, frame, rise);
     for curve in &panel.curves {
-        let points: Vec<Point> =
-            finite(curve).map(|(x, y)| at(frame.x(x), rise.y(y))).collect();
+        let points: Vec<Point> = finite(curve).map(|(x, y)| at(frame.x(x), rise.y(y))).collect();
         own.polyline(points, curve.style.stroke());
         for mark in curve.marks.iter().filter(|mark| mark.x.is_finite() && mark.y.is_finite()) {
             let point = at(frame.x(mark.x), rise.y(mark.y));
@@ -163,8 +162,7 @@ fn thousandths(y: f64) -> i64 {
 fn name_points(canvas: &mut Canvas, mut named: Vec<Named>, frame: Frame, rise: Rise, (highest, lowest): (f64, f64)) {
     named.sort_by(|a, b| a.point.x.total_cmp(&b.point.x));
     let before = canvas.items.len();
-    let bounds =
-        Extent { left: 0.0, top: highest - OUTSIDE, right: frame.right + 2.0, bottom: lowest + OUTSIDE };
+    let bounds = Extent { left: 0.0, top: highest - OUTSIDE, right: frame.right + 2.0, bottom: lowest + OUTSIDE };
     let mut field = Field::new(bounds);
     canvas.items.iter().for_each(|item| field.add(item));
     let upwards = |point: Point| point.y <= rise.axis;
@@ -188,8 +186,12 @@ fn name_points(canvas: &mut Canvas, mut named: Vec<Named>, frame: Frame, rise: R
 fn keep_clear(canvas: &mut Canvas, layer: Layer, notes: &[Note]) {
     let texts = canvas.items.iter().filter(|item| matches!(item, Item::Text { .. }));
     let others: Vec<Extent> = texts.map(Extent::of).filter(|extent| extent.left < layer.right + 1.0).collect();
-    let edge = others.iter().fold(layer.edge, |edge, other| {
-        if layer.up { edge.min(other.top - 3.0) } else { edge.max(other.bottom + 1.0) }
-    });
+    let edge =
+        others.iter().fold(
+            layer.edge,
+            |edge, other| {
+                if layer.up { edge.min(other.top - 3.0) } else { edge.max(other.bottom + 1.0) }
+            },
+        );
     annotate(canvas, notes, Layer { edge, ..layer });
 }

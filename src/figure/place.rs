@@ -61,7 +61,8 @@ impl Field {
     }
 
     fn free(&self, label: Extent) -> bool {
-        if label.with(self.bounds) != self.bounds || self.boxes.iter().any(|other| label.grown(APART).overlaps(*other)) {
+        if label.with(self.bounds) != self.bounds || self.boxes.iter().any(|other| label.grown(APART).overlaps(*other))
+        {
             return false;
         }
         let hit = |(from, to, weight): &Weighted| crosses(label.grown(CLEAR + weight / 2.0), *from, *to);

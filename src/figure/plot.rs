@@ -148,9 +148,12 @@ fn alt(plot: &Plot) -> String {
                 let name = if curve.label.is_empty() { String::new() } else { format!("{} ", curve.label) };
                 format!("{name}{}", mark.label)
             })
-            .chain(panel.chords.iter().filter_map(|chord| {
-                chord.ordinate.as_ref().map(|(.., label)| format!("from the chord {label}"))
-            }))
+            .chain(
+                panel
+                    .chords
+                    .iter()
+                    .filter_map(|chord| chord.ordinate.as_ref().map(|(.., label)| format!("from the chord {label}"))),
+            )
             .collect();
         let list = if said.is_empty() { "no values are named".to_owned() } else { said.join("; ") };
         text += &format!(" {} in {}: {list}.", panel.symbol, panel.unit);

@@ -32,10 +32,8 @@ pub fn released(member: &Member, redundants: &[Redundant], said: &Words, width: 
     for (index, support) in member.supports.iter().enumerate() {
         let node = at(scale.x(support.at.x()), 0.0);
         let half = depths.half_at(member, support.at.x());
-        let (force, moment) = (
-            redundants.contains(&Redundant::Force(index)),
-            redundants.contains(&Redundant::Moment(index)),
-        );
+        let (force, moment) =
+            (redundants.contains(&Redundant::Force(index)), redundants.contains(&Redundant::Moment(index)));
         let whole = Symbol::of(member, support, node, half, size);
         low = low.max(remaining(&mut canvas, whole, force, moment));
         if force {
@@ -103,12 +101,7 @@ pub fn name(member: &Member, redundant: Redundant) -> Vec<Run> {
     vec![symbol(letter), sub(support)]
 }
 
-fn notes(
-    member: &Member,
-    redundants: &[Redundant],
-    scale: Scale,
-    wanted: impl Fn(&Redundant) -> bool,
-) -> Vec<Note> {
+fn notes(member: &Member, redundants: &[Redundant], scale: Scale, wanted: impl Fn(&Redundant) -> bool) -> Vec<Note> {
     let note = |redundant: &Redundant| {
         let support = member.supports.get(redundant.support())?;
         Some(Note::new(scale.x(support.at.x()), name(member, *redundant)))

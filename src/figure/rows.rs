@@ -145,9 +145,11 @@ fn mixed(notes: &[Note], layer: Layer) -> Option<Vec<Flag>> {
             let other = notes.get(notes.len() - 1 - index);
             other.map_or(f64::INFINITY, |other| other.x - half(other))
         };
-        let hit = placed.iter().enumerate().filter(|(index, other)| {
-            if other.centred { left(*index) < end } else { other.pole < end }
-        });
+        let hit = placed.iter().enumerate().filter(
+            |(index, other)| {
+                if other.centred { left(*index) < end } else { other.pole < end }
+            },
+        );
         let row = hit.map(|(_, other)| other.row + 1).max().unwrap_or(0);
         placed.push(Flag { pole: note.x, row, centred: false });
     }
@@ -248,7 +250,10 @@ fn stand(canvas: &mut Canvas, notes: &[Note], places: &[f64], layer: Layer) -> f
 }
 
 fn tallest(notes: &[Note]) -> (f64, f64) {
-    notes.iter().map(|note| measure::heights(&note.runs, LABEL)).fold((0.0, 0.0), |sum, h| (sum.0.max(h.0), sum.1.max(h.1)))
+    notes
+        .iter()
+        .map(|note| measure::heights(&note.runs, LABEL))
+        .fold((0.0, 0.0), |sum, h| (sum.0.max(h.0), sum.1.max(h.1)))
 }
 
 /// Places as near as possible (least squares) to what each would like, in order, `apart` from the next, within `low` and

@@ -203,7 +203,8 @@ fn arrows(canvas: &mut Canvas, placed: &Placed) {
     let strip = &placed.strip;
     let length = strip.to - strip.from;
     let count = (length / 5.0).round().max(1.0) as u32;
-    let height = |x: f64| strip.left + (strip.right - strip.left) * if length > 0.0 { (x - strip.from) / length } else { 0.0 };
+    let height =
+        |x: f64| strip.left + (strip.right - strip.left) * if length > 0.0 { (x - strip.from) / length } else { 0.0 };
     for index in 0..=count {
         let x = strip.from + length * f64::from(index) / f64::from(count);
         let tall = height(x);

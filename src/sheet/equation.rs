@@ -24,9 +24,9 @@ pub struct NotMathematics {
 /// Words of Typst math that an equation may use; each names a symbol or sets something, none reads or runs anything.
 const WORDS: [&str; 45] = [
     "frac", "abs", "min", "max", "sqrt", "times", "dot", "Delta", "Sigma", "alpha", "beta", "gamma", "delta", "eta",
-    "theta", "kappa", "lambda", "mu", "nu", "xi", "pi", "rho", "sigma", "tau", "phi", "psi", "omega", "epsilon", "zeta",
-    "chi", "sum", "integral", "approx", "thin", "med", "thick", "quad", "upright", "bold", "prime", "degree", "minus",
-    "plus", "percent", "dots",
+    "theta", "kappa", "lambda", "mu", "nu", "xi", "pi", "rho", "sigma", "tau", "phi", "psi", "omega", "epsilon",
+    "zeta", "chi", "sum", "integral", "approx", "thin", "med", "thick", "quad", "upright", "bold", "prime", "degree",
+    "minus", "plus", "percent", "dots",
 ];
 
 impl Equation {
@@ -250,7 +250,10 @@ impl Measure {
             .flat_map(SyntaxNode::children)
             .collect();
         let is_mark = |child: &SyntaxNode| {
-            matches!(child.kind(), SyntaxKind::LeftParen | SyntaxKind::RightParen | SyntaxKind::Comma | SyntaxKind::Space)
+            matches!(
+                child.kind(),
+                SyntaxKind::LeftParen | SyntaxKind::RightParen | SyntaxKind::Comma | SyntaxKind::Space
+            )
         };
         let parts = arguments.iter().filter(|child| !is_mark(child));
         if callee(node) == Some("frac") {
@@ -338,9 +341,18 @@ mod tests {
 
     #[test]
     fn anything_else_is_refused() {
-        for source in
-            ["#read(\"x\")", "a $ b", "sys.inputs", "eval(\"1\")", "\\u{41}", "a // b", "a /* b */", "x & y", "image(a)", "\"a"]
-        {
+        for source in [
+            "#read(\"x\")",
+            "a $ b",
+            "sys.inputs",
+            "eval(\"1\")",
+            "\\u{41}",
+            "a // b",
+            "a /* b */",
+            "x & y",
+            "image(a)",
+            "\"a",
+        ] {
             assert!(Equation::new(source, "").is_err(), "{source}");
         }
     }
@@ -356,7 +368,8 @@ mod tests {
 
     #[test]
     fn a_long_sum_breaks_before_its_signs_and_keeps_every_term() {
-        let source = "= 1.5 times 2.25 + (-3) times 4 - frac(5 times 6, 7) + 8.125 - (9 + 10.5 + 11.5 + 12.5 + 13.5 + 14.5)";
+        let source =
+            "= 1.5 times 2.25 + (-3) times 4 - frac(5 times 6, 7) + 8.125 - (9 + 10.5 + 11.5 + 12.5 + 13.5 + 14.5)";
         let Ok(equation) = Equation::new(source, "read out") else { panic!() };
         let lines: Vec<String> = equation.lines(40.0, 35.0, 10.0).iter().map(|line| line.source().to_owned()).collect();
         assert_eq!(lines.join(" "), source);

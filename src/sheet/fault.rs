@@ -35,7 +35,7 @@ pub enum Fault {
     },
     /// The page could not be set.
     Setting {
-        /// File of the Typst text, line and column from 1, where known.
+        /// File, line and column from 1, where known; line or column 0 where only the file is.
         place: Option<(String, usize, usize)>,
         /// What is wrong.
         message: String,
@@ -72,8 +72,11 @@ impl fmt::Display for Fault {
             Self::UnknownTemplate { name, known } => {
                 write!(out, "no template is called {name:?}; there are {}", known.join(", "))
             }
+            Self::Setting { place: Some((file, line, 0)), message } => {
+                write!(out, "template {file}, line {line}: {message}")
+            }
             Self::Setting { place: Some((file, line, column)), message } => {
-                write!(out, "setting the sheet, {file}, line {line}, column {column}: {message}")
+                write!(out, "template {file}, line {line}, column {column}: {message}")
             }
             Self::Setting { place: None, message } => write!(out, "setting the sheet: {message}"),
             Self::Equation { source, found } => write!(out, "the equation {source:?} holds {found:?}"),

@@ -43,9 +43,8 @@ impl Face {
 static FACES: LazyLock<Vec<ttf_parser::Face<'static>>> =
     LazyLock::new(|| FILES.iter().filter_map(|bytes| ttf_parser::Face::parse(bytes, 0).ok()).collect());
 
-static FONTS: LazyLock<Vec<Font>> = LazyLock::new(|| {
-    FILES.iter().filter_map(|bytes| Font::new(Bytes::new(*bytes), 0)).collect()
-});
+static FONTS: LazyLock<Vec<Font>> =
+    LazyLock::new(|| FILES.iter().filter_map(|bytes| Font::new(Bytes::new(*bytes), 0)).collect());
 
 static BOOK: LazyLock<LazyHash<FontBook>> = LazyLock::new(|| LazyHash::new(FontBook::from_fonts(FONTS.iter())));
 

@@ -2,17 +2,17 @@
 
 use minijinja::value::{Serde, Value};
 use serde::Serialize;
+use typst::WorldExt;
 use typst::diag::{SourceDiagnostic, Warned};
 use typst::foundations::{Bytes, Dict, Smart, Value as Data};
 use typst::layout::{Frame, FrameItem};
 use typst::syntax::DiagSpanKind;
-use typst::WorldExt;
 use typst_layout::PagedDocument;
 use typst_pdf::{PdfOptions, PdfStandard, PdfStandards};
 
 use super::page::{Page, Paper};
 use super::template::Templates;
-use super::world::Closed;
+use super::world::{Closed, MAIN};
 use super::{Fault, Model, missing_glyph};
 use crate::figure::{Drawing, Item};
 
@@ -90,7 +90,7 @@ pub fn print(model: &Model, options: &Options) -> Result<Printed, Fault> {
             standards,
             ..PdfOptions::default()
         };
-        let pdf = typst_pdf::pdf(document, &pdf_options).map_err(|errors| first(world, &errors))?;
+        let pdf = typst_pdf::pdf(document, &pdf_options).map_err(|errors| first(world, &errors, &options.templates))?;
         Ok(Printed { pdf, pages: document.pages().len(), warnings })
     })
 }
@@ -149,26 +149,34 @@ fn within<T>(
     let world = Closed::new(text, &options.templates.modules(), inputs(&options.attachments))
         .ok_or_else(|| Fault::Setting { place: None, message: "a template's name is no path".to_owned() })?;
     let Warned { output, warnings } = typst::compile::<PagedDocument>(&world);
-    let warnings = warnings.iter().map(|warning| said(&world, warning).to_string()).collect();
-    let result = output.map_err(|errors| first(&world, &errors)).and_then(|document| then(&world, &document, warnings));
+    let warnings = warnings.iter().map(|warning| said(&world, warning, &options.templates).to_string()).collect();
+    let result = output
+        .map_err(|errors| first(&world, &errors, &options.templates))
+        .and_then(|document| then(&world, &document, warnings));
     // Without this a long run would keep every document it has ever set.
     comemo::evict(0);
     result
 }
 
-fn first(world: &Closed, errors: &[SourceDiagnostic]) -> Fault {
+fn first(world: &Closed, errors: &[SourceDiagnostic], templates: &Templates) -> Fault {
     errors.first().map_or_else(
         || Fault::Setting { place: None, message: "the compiler gave no reason".to_owned() },
-        |error| said(world, error),
+        |error| said(world, error, templates),
     )
 }
 
-fn said(world: &Closed, diagnostic: &SourceDiagnostic) -> Fault {
+/// What the compiler says, at its place in a template where that can be told.
+fn said(world: &Closed, diagnostic: &SourceDiagnostic, templates: &Templates) -> Fault {
     let file = match diagnostic.span.get() {
         DiagSpanKind::Detached => None,
         DiagSpanKind::Number { id, .. } | DiagSpanKind::Range { id, .. } => Some(id),
     };
     let place = file.zip(world.range(diagnostic.span)).and_then(|(file, range)| world.place(file, range.start));
+    let origin = place
+        .as_ref()
+        .filter(|(file, ..)| format!("/{file}") == MAIN)
+        .and_then(|(_, line, _)| templates.origin(world.text(), *line));
+    let place = origin.map(|(file, line)| (file, line, 0)).or(place);
     let hints: String = diagnostic.hints.iter().map(|hint| format!("; {}", hint.v)).collect();
     Fault::Setting { place, message: format!("{}{hints}", diagnostic.message) }
 }

@@ -118,6 +118,16 @@ pub fn prose(text: &str) -> String {
     }
 }
 
+/// Text as it stands as a Typst expression; only `A–B` is kept on one line.
+pub fn plain(text: &str) -> String {
+    let mut parts = Vec::new();
+    held(text, &mut parts);
+    match parts.as_slice() {
+        [one] => one.clone(),
+        several => format!("{{{}}}", several.join(";")),
+    }
+}
+
 /// Plain text; a word that joins two names by a dash (`A–B`) is kept on one line.
 fn held(text: &str, parts: &mut Vec<String>) {
     let joined = |word: &str| word.trim_matches(|c: char| !c.is_alphanumeric()).contains('–');
@@ -164,7 +174,8 @@ fn symbol(text: &str) -> Option<(&str, String, &str)> {
         None => (word, String::new()),
     };
     let greek = GREEK.iter().find(|(name, _)| *name == base).map(|(_, letter)| *letter);
-    let letters = matches!(base, "EI" | "GA" | "qw") || (base.len() == 1 && base.starts_with(|c: char| c.is_ascii_alphabetic()));
+    let letters =
+        matches!(base, "EI" | "GA" | "qw") || (base.len() == 1 && base.starts_with(|c: char| c.is_ascii_alphabetic()));
     // A letter that stands alone is a word or a name; only with a subscript is it surely a symbol.
     let sure = !sub.is_empty() || matches!(base, "EI" | "GA" | "psi" | "dT");
     let shown = match (greek, base) {

@@ -2,12 +2,12 @@
 
 use std::collections::BTreeMap;
 
-use minijinja::value::{Serde, Value};
 use minijinja::syntax::SyntaxConfig;
+use minijinja::value::{Serde, Value};
 use minijinja::{AutoEscape, Environment, Error, ErrorKind, Output, State, UndefinedBehavior};
 
 use super::drawing::{self, plain};
-use super::prose::{literal, prose, short};
+use super::prose::{self, literal, short};
 use super::{Equation, Fault};
 use crate::figure::Drawing;
 
@@ -64,9 +64,7 @@ impl Templates {
                 *file = text.into();
                 Ok(())
             }
-            None => {
-                Err(Fault::UnknownTemplate { name: name.to_owned(), known: self.files.keys().cloned().collect() })
-            }
+            None => Err(Fault::UnknownTemplate { name: name.to_owned(), known: self.files.keys().cloned().collect() }),
         }
     }
 
@@ -75,6 +73,19 @@ impl Templates {
         let text = self.files.get(LABELS).map_or("", String::as_str);
         let tree = toml::from_str(text).map_err(|error| Fault::Labels { message: error.to_string() })?;
         Ok(Labels { tree })
+    }
+
+    /// Where in the templates a line of the text they were put together to comes from: the file that the last mark before
+    /// it names, and the line there that begins most like it; 0 where none does.
+    pub(super) fn origin(&self, text: &str, line: usize) -> Option<(String, usize)> {
+        let above: Vec<&str> = text.lines().take(line).collect();
+        let wanted = above.last()?.trim();
+        let name = above.iter().rev().find_map(|line| line.trim().strip_prefix("//@ "))?.trim().to_owned();
+        let alike = |line: &str| line.trim().chars().zip(wanted.chars()).take_while(|(a, b)| a == b).count();
+        let lines = self.files.get(&name)?.lines().enumerate();
+        let best =
+            lines.map(|(index, line)| (alike(line), index + 1)).max_by_key(|(same, index)| (*same, usize::MAX - index));
+        Some((name, best.filter(|(same, _)| *same >= 4).map_or(0, |(_, index)| index)))
     }
 
     /// The Typst module beside the sheet: its name and text.
@@ -96,7 +107,8 @@ impl Templates {
         for name in ["safe", "escape", "e"] {
             environment.remove_filter(name);
         }
-        environment.add_filter("prose", |text: &str| code(prose(text)));
+        environment.add_filter("prose", |text: &str| code(prose::prose(text)));
+        environment.add_filter("plain", |text: &str| code(prose::plain(text)));
         environment.add_filter("short", |text: &str, width: f64| short(text, width, HEAD_PT));
         environment.add_filter("mm", |value: f64| code(format!("{}mm", plain(value))));
         environment.add_filter("em", |value: f64| code(format!("{}em", plain(value))));
@@ -146,16 +158,15 @@ fn math(equation: &Value) -> Result<Value, Error> {
     Ok(code(format!("eq({}, ${}$)", literal(equation.alt()), equation.source())))
 }
 
+/// The innermost of nested errors: that of the file at fault, not of those that include it.
 fn fault(error: Error) -> Fault {
-    let mut message = error.detail().map_or_else(|| error.kind().to_string(), str::to_owned);
-    if error.kind() == ErrorKind::UndefinedError {
-        message = format!("undefined value: {error}");
+    let mut inner: &Error = &error;
+    while let Some(next) = std::error::Error::source(inner).and_then(|source| source.downcast_ref::<Error>()) {
+        inner = next;
     }
-    Fault::Template {
-        file: error.name().unwrap_or(MAIN).to_owned(),
-        line: error.line().unwrap_or_default(),
-        message,
-    }
+    let kind = inner.kind().to_string();
+    let message = inner.detail().map_or(kind.clone(), |detail| format!("{kind}: {detail}"));
+    Fault::Template { file: inner.name().unwrap_or(MAIN).to_owned(), line: inner.line().unwrap_or_default(), message }
 }
 
 /// The words of the templates.

@@ -37,6 +37,11 @@ impl Closed {
         Some(Self { library, main: main_id, sources })
     }
 
+    /// The text that minijinja put together.
+    pub(super) fn text(&self) -> &str {
+        self.sources.get(&self.main.into_raw().get()).map_or("", Source::text)
+    }
+
     /// Name, line and column (from 1) of a byte in a file of this world.
     pub(super) fn place(&self, file: FileId, byte: usize) -> Option<(String, usize, usize)> {
         let lines = self.sources.get(&file.into_raw().get())?.lines();

@@ -30,7 +30,8 @@ fn elevations_are_clean() {
 fn load_cases_are_clean() {
     let member = build::propped();
     for (index, case) in member.cases.iter().enumerate() {
-        let said = Words { total: "Total load 126.0 kN downward.".to_owned(), self_weight: "0.42 kN/m".to_owned(), ..said() };
+        let said =
+            Words { total: "Total load 126.0 kN downward.".to_owned(), self_weight: "0.42 kN/m".to_owned(), ..said() };
         clean(&format!("loads-propped-{}", case.name), &figure::loads(&member, index, &said, COLUMN));
     }
     clean("loads-crowded", &figure::loads(&build::crowded(), 0, &Words::default(), COLUMN));

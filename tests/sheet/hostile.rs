@@ -110,7 +110,9 @@ fn filled(hostile: &str) -> Model {
     }
     let mut model = real::model_without_working(&member);
     model.annex.lines = vec![hostile.to_owned()];
-    model.given.warnings = vec!["a warning".to_owned()];
+    model.given.warnings = vec![hostile.to_owned()];
+    // Drawings hold names and figures alone, and take most of the time.
+    model.drawings.iter_mut().for_each(|drawing| drawing.items.clear());
     model
 }
 
@@ -127,7 +129,7 @@ fn hostile_text_is_printed_as_it_stands() {
         let wanted = packed(hostile);
         // Project, client, office, subject, case titles, notes, sources, combination titles, basis, annex.
         let count = all.matches(&wanted).count();
-        assert!(count >= 14, "{hostile:?} stands {count} times in {all}");
+        assert!(count >= 18, "{hostile:?} stands {count} times in {all}");
     }
 }
 

@@ -1,6 +1,8 @@
 //! The sheet: printed, read back, and made to hold hostile text.
 
 mod hostile;
+mod office;
+mod readback;
 mod real;
 mod sample;
 
@@ -18,7 +20,6 @@ fn the_sample_prints_without_a_warning() {
     assert_eq!(printed.warnings, Vec::<String>::new());
     assert!(printed.pages > 8, "{}", printed.pages);
 }
-
 
 #[test]
 fn a_composed_sheet_prints() {

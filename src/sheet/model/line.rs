@@ -66,12 +66,7 @@ pub fn symbols(step: &working::Step) -> Result<Equation, NotMathematics> {
 
 /// A step as a line; `basis` is what it rests on where the line above did not say so, `several` whether its block has
 /// other lines.
-pub fn line(
-    step: &working::Step,
-    basis: &str,
-    origins: Option<String>,
-    several: bool,
-) -> Result<Line, NotMathematics> {
+pub fn line(step: &working::Step, basis: &str, origins: Option<String>, several: bool) -> Result<Line, NotMathematics> {
     let symbols = symbols(step)?;
     let result = typeset::quantity(step.result.printed, &step.result.unit);
     let repeats = step.numbers.is_empty() || Decimal::parse(&step.numbers) == Some(step.result.printed);
@@ -83,7 +78,8 @@ pub fn line(
     let end = text_width("= ", face, page::TEXT_PT) + text_width(&result, face, page::TEXT_PT);
     let stated = repeats && (step.math.is_empty() || step.math == step.math_symbol);
     let setting = if stated { Setting::Stated } else { setting(&symbols, numbers.as_ref(), end) };
-    let beside = text_width(&step.title, Face::Regular, page::TABLE_PT) + page::SYMBOL + page::GAP + end <= page::COLUMN;
+    let beside =
+        text_width(&step.title, Face::Regular, page::TABLE_PT) + page::SYMBOL + page::GAP + end <= page::COLUMN;
     let inside = stated && beside && symbols.width(page::TEXT_PT) < page::SYMBOL;
     let (title, words) = if inside { ("", step.title.as_str()) } else { (step.title.as_str(), "") };
     let mut line = Line {
@@ -128,7 +124,9 @@ fn setting(symbols: &Equation, numbers: Option<&Equation>, end: f64) -> Setting 
 /// Breaks long equations over several lines, and says where the result goes and whether a part must be made smaller.
 fn spread(line: &mut Line, end: f64) {
     let broken = |list: &[Equation], first: f64| -> Vec<Equation> {
-        list.iter().flat_map(|equation| equation.lines(first, page::COLUMN - 2.0 * page::INDENT, page::TEXT_PT)).collect()
+        list.iter()
+            .flat_map(|equation| equation.lines(first, page::COLUMN - 2.0 * page::INDENT, page::TEXT_PT))
+            .collect()
     };
     line.symbols = broken(&line.symbols, page::COLUMN);
     line.numbers = broken(&line.numbers, page::COLUMN - page::INDENT);
