@@ -3,6 +3,7 @@
 //! The modules stand in the order of the flow; each may use what stands to its left and nothing to its right.
 
 pub mod analysis;
+pub mod deck;
 pub mod diagnostic;
 pub mod member;
 pub mod number;
