@@ -13,5 +13,5 @@ mod trace;
 mod units;
 
 pub use draft::Mismatch;
-pub use narrate::narrate;
+pub use narrate::{Demand, narrate};
 pub use step::{Block, Body, Chapter, Chapters, Figure, Input, Origin, Step, Working};
