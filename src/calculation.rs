@@ -4,6 +4,7 @@ use sha2::{Digest, Sha256};
 
 use crate::analysis::stability::{self, BadChoice, Mechanism, Movement};
 use crate::analysis::{self, Analysis};
+use crate::crosscheck::{self, Row};
 use crate::diagnostic::Diagnostic;
 use crate::member::build::{self, Reading};
 use crate::member::{Member, Place};
@@ -141,6 +142,80 @@ fn called(member: &Member, place: Place) -> String {
     hinge.or(support).unwrap_or_else(|| format!("x = {} m", place.exact()))
 }
 
-fn crosscheck(_member: &Member, _analysis: &Analysis) -> Result<Agreement, Fault> {
-    Ok(Agreement::default())
+/// The largest relative disagreement that is taken for rounding.
+const TOLERANCE: f64 = 1e-6;
+
+/// Figures by the first and the second route, case by case.
+pub fn both_routes(member: &Member, analysis: &Analysis) -> Vec<Row> {
+    let mut rows = Vec::new();
+    for ((case, first), second) in member.cases.iter().zip(&analysis.cases).zip(crosscheck::solve(member)) {
+        let mut forces = Vec::new();
+        let mut moments = Vec::new();
+        let pairs = first.total.reactions.iter().zip(&second.reactions);
+        for (support, (ours, theirs)) in member.supports.iter().zip(pairs) {
+            let name = |what: &str| format!("{what} of support {} in case {}", support.name, case.name);
+            if support.holds_deflection() {
+                forces.push((name("force"), ours.force, theirs.0));
+            }
+            if support.holds_rotation() {
+                moments.push((name("moment"), ours.moment, theirs.1));
+            }
+        }
+        // Moments are measured by the greatest moment anywhere, not only where a support takes one.
+        let arms = member.end().x() * forces.iter().map(|(_, force, _)| force.abs()).fold(0.0, f64::max) * 1e-3;
+        let field = analysis::Field { model: &analysis.model, solution: &first.total, actions: Vec::new() };
+        let at = |place: Place| match field.model.cut_at(place) {
+            Some(0) => field.ends(0).start.v,
+            Some(cut) => field.ends(cut - 1).end.v,
+            None => 0.0,
+        };
+        let inside = first.total.pieces.iter().flat_map(|piece| [piece.start.v, piece.end.v]);
+        let greatest = inside.map(f64::abs).fold(0.0, f64::max);
+        let named = |place: Place| format!("deflection at x = {} m in case {}", place.exact(), case.name);
+        let mut deflections: Vec<(String, f64, f64)> =
+            second.deflections.iter().map(|(place, v)| (named(*place), at(*place), *v)).collect();
+        deflections.push((String::new(), greatest, greatest));
+        moments.push((String::new(), arms, arms));
+        for list in [forces, moments, deflections] {
+            rows.extend(crosscheck::compare(&list).into_iter().filter(|row| !row.what.is_empty()));
+        }
+    }
+    rows
+}
+
+fn crosscheck(member: &Member, analysis: &Analysis) -> Result<Agreement, Fault> {
+    let rows = both_routes(member, analysis);
+    let pairs = |solution: &analysis::Solution| -> Vec<(f64, f64)> {
+        solution.reactions.iter().map(|reaction| (reaction.force, reaction.moment)).collect()
+    };
+    let count = member.cases.len();
+    let single = |case: usize| (0..count).map(|index| if index == case { 1.0 } else { 0.0 }).collect::<Vec<f64>>();
+    let cases = analysis
+        .cases
+        .iter()
+        .enumerate()
+        .map(|(case, solution)| crosscheck::residual(member, &single(case), &pairs(&solution.total)));
+    let combinations = member.combinations.iter().zip(&analysis.combinations).map(|(combination, solution)| {
+        let factors: Vec<f64> = combination.factors.iter().map(|factor| factor.value).collect();
+        crosscheck::residual(member, &factors, &pairs(solution))
+    });
+    let agreement = Agreement {
+        equilibrium: cases.chain(combinations).fold(0.0, f64::max),
+        second_method: crosscheck::largest(&rows),
+        reciprocity: analysis.flexibility.asymmetry(),
+    };
+    let mut disagreeing: Vec<String> = rows
+        .iter()
+        .filter(|row| row.difference > TOLERANCE || row.difference.is_nan())
+        .map(|row| {
+            format!("{}: {:e} by the force method, {:e} by the stiffness method", row.what, row.first, row.second)
+        })
+        .collect();
+    if agreement.equilibrium > TOLERANCE {
+        disagreeing.push(format!("loads and reactions are out of balance by {:e} of their sum", agreement.equilibrium));
+    }
+    if agreement.reciprocity > TOLERANCE {
+        disagreeing.push(format!("the flexibilities are not symmetric: {:e}", agreement.reciprocity));
+    }
+    if disagreeing.is_empty() { Ok(agreement) } else { Err(Fault::Disagreement(disagreeing)) }
 }

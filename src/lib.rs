@@ -4,6 +4,7 @@
 
 pub mod analysis;
 pub mod calculation;
+pub mod crosscheck;
 pub mod deck;
 pub mod diagnostic;
 pub mod member;
