@@ -1,0 +1,269 @@
+//! Equations: read with the compiler's own parser, held to plain mathematics, measured before they are set.
+
+use serde::Serialize;
+use typst::syntax::{SyntaxKind, SyntaxNode, parse_math};
+
+use super::fonts::{Face, MM_PER_PT, advance};
+
+/// An equation in Typst math, with the words that stand for it where nobody sees the page.
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+pub struct Equation {
+    source: String,
+    alt: String,
+}
+
+/// Why a text is no equation that a sheet may hold.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct NotMathematics {
+    /// The source that was refused.
+    pub source: String,
+    /// What in it is not allowed.
+    pub found: String,
+}
+
+/// Words of Typst math that an equation may use; each names a symbol or sets something, none reads or runs anything.
+const WORDS: [&str; 45] = [
+    "frac", "abs", "min", "max", "sqrt", "times", "dot", "Delta", "Sigma", "alpha", "beta", "gamma", "delta", "eta",
+    "theta", "kappa", "lambda", "mu", "nu", "xi", "pi", "rho", "sigma", "tau", "phi", "psi", "omega", "epsilon", "zeta",
+    "chi", "sum", "integral", "approx", "thin", "med", "thick", "quad", "upright", "bold", "prime", "degree", "minus",
+    "plus", "percent", "dots",
+];
+
+impl Equation {
+    /// Reads an equation. Only symbols, figures, quoted subscripts, fractions, roots, powers and brackets are let
+    /// through: nothing that could name a file, a function of the program or a page.
+    pub fn new(source: impl Into<String>, alt: impl Into<String>) -> Result<Self, NotMathematics> {
+        let source = source.into();
+        match foreign(&parse_math(&source)) {
+            Some(found) => Err(NotMathematics { source, found }),
+            None => Ok(Self { source, alt: alt.into() }),
+        }
+    }
+
+    /// The source, safe to stand between dollar signs.
+    pub fn source(&self) -> &str {
+        &self.source
+    }
+
+    /// The words.
+    pub fn alt(&self) -> &str {
+        &self.alt
+    }
+
+    /// Estimated width in mm at a size in pt, set on one line with full-size fractions; a little more than it takes.
+    pub fn width(&self, size_pt: f64) -> f64 {
+        Measure::of(&parse_math(&self.source), Level::Display).total * size_pt * MM_PER_PT
+    }
+
+    /// Estimated width in mm of the widest part that no line break can divide.
+    pub fn widest_part(&self, size_pt: f64) -> f64 {
+        Measure::of(&parse_math(&self.source), Level::Display).widest() * size_pt * MM_PER_PT
+    }
+
+    /// Whether it holds a fraction, which makes its line tall.
+    pub fn is_tall(&self) -> bool {
+        has_fraction(&parse_math(&self.source))
+    }
+}
+
+/// The first part of a tree that is not plain mathematics.
+fn foreign(node: &SyntaxNode) -> Option<String> {
+    use SyntaxKind as K;
+    let plain = match node.kind() {
+        K::MathIdent => WORDS.contains(&node.leaf_text().as_str()),
+        K::Str => node.leaf_text().chars().all(|c| c != '\\'),
+        K::Math | K::MathText | K::MathShorthand | K::MathCall | K::MathArgs | K::MathDelimited | K::MathAttach => true,
+        K::MathFrac | K::MathPrimes | K::MathRoot | K::Space | K::Slash | K::Hat | K::Underscore | K::Comma => true,
+        K::LeftParen | K::RightParen | K::LeftBracket | K::RightBracket | K::Root | K::Text => true,
+        _ => false,
+    };
+    if plain { node.children().find_map(foreign) } else { Some(node.full_text().to_string()) }
+}
+
+fn has_fraction(node: &SyntaxNode) -> bool {
+    node.kind() == SyntaxKind::MathFrac || callee(node) == Some("frac") || node.children().any(has_fraction)
+}
+
+/// The word a call begins with.
+fn callee(node: &SyntaxNode) -> Option<&str> {
+    if node.kind() != SyntaxKind::MathCall {
+        return None;
+    }
+    node.children().next().map(|head| head.leaf_text().as_str())
+}
+
+/// Size of a part: full-size fractions outermost, then text, then subscripts.
+#[derive(Clone, Copy, PartialEq, Eq)]
+enum Level {
+    Display,
+    Text,
+    Script,
+}
+
+impl Level {
+    const fn scale(self) -> f64 {
+        match self {
+            Self::Display | Self::Text => 1.0,
+            Self::Script => 0.72,
+        }
+    }
+
+    const fn inside(self) -> Self {
+        match self {
+            Self::Display => Self::Text,
+            Self::Text | Self::Script => Self::Script,
+        }
+    }
+}
+
+/// Widths in ems: of the whole, and of the parts between places where a line may break.
+#[derive(Clone, Debug, Default)]
+struct Measure {
+    total: f64,
+    part: f64,
+    greatest: f64,
+}
+
+impl Measure {
+    fn of(node: &SyntaxNode, level: Level) -> Self {
+        let mut measure = Self::default();
+        measure.add(node, level);
+        measure
+    }
+
+    fn widest(&self) -> f64 {
+        self.greatest.max(self.part)
+    }
+
+    fn solid(&mut self, width: f64) {
+        self.total += width;
+        self.part += width;
+    }
+
+    fn breaks(&mut self, width: f64) {
+        self.total += width;
+        self.greatest = self.greatest.max(self.part + width);
+        self.part = 0.0;
+    }
+
+    fn add(&mut self, node: &SyntaxNode, level: Level) {
+        use SyntaxKind as K;
+        match node.kind() {
+            K::MathCall => self.call(node, level),
+            K::MathFrac => {
+                let parts = node.children().filter(|child| !matches!(child.kind(), K::Slash | K::Space));
+                let widest = parts.map(|part| Self::of(part, level.inside()).total).fold(0.0, f64::max);
+                self.solid(widest + 0.25);
+            }
+            K::MathAttach => {
+                let mut children = node.children();
+                if let Some(base) = children.next() {
+                    self.solid(Self::of(base, level).total);
+                }
+                let scripts = children.filter(|child| !matches!(child.kind(), K::Hat | K::Underscore));
+                self.solid(scripts.map(|script| Self::of(script, Level::Script).total).sum::<f64>() + 0.06);
+            }
+            K::MathDelimited => {
+                let inner: f64 = node.children().map(|child| Self::of(child, level).total).sum();
+                self.solid(inner);
+            }
+            K::Space => {}
+            K::Str => self.solid(literal(node.leaf_text().trim_matches('"')) * level.scale()),
+            _ if node.children().len() > 0 => node.children().for_each(|child| self.add(child, level)),
+            _ => self.leaf(node.leaf_text(), level),
+        }
+    }
+
+    fn call(&mut self, node: &SyntaxNode, level: Level) {
+        let arguments: Vec<&SyntaxNode> = node
+            .children()
+            .filter(|child| child.kind() == SyntaxKind::MathArgs)
+            .flat_map(SyntaxNode::children)
+            .collect();
+        let is_mark = |child: &SyntaxNode| {
+            matches!(child.kind(), SyntaxKind::LeftParen | SyntaxKind::RightParen | SyntaxKind::Comma | SyntaxKind::Space)
+        };
+        let parts = arguments.iter().filter(|child| !is_mark(child));
+        if callee(node) == Some("frac") {
+            let widest = parts.map(|part| Self::of(part, level.inside()).total).fold(0.0, f64::max);
+            return self.solid(widest + 0.25);
+        }
+        let inner: f64 = parts.map(|part| Self::of(part, level).total + 0.5).sum();
+        let name = match callee(node) {
+            Some(word @ ("min" | "max")) => literal(word) + 0.8,
+            _ => 0.7,
+        };
+        self.solid((name + inner) * level.scale());
+    }
+
+    fn leaf(&mut self, text: &str, level: Level) {
+        let scale = level.scale();
+        let spaced = if level == Level::Script { 0.0 } else { 1.0 };
+        match text {
+            "+" | "-" | "times" | "dot" | "minus" | "plus" => self.breaks((0.778 + 0.444 * spaced) * scale),
+            "=" | "<" | ">" | "<=" | ">=" | "approx" => self.breaks((0.778 + 0.556 * spaced) * scale),
+            "," => self.solid((0.28 + 0.17 * spaced) * scale),
+            "thin" => self.solid(0.17),
+            "med" => self.solid(0.23),
+            "thick" => self.solid(0.28),
+            "quad" => self.solid(1.0),
+            "sum" | "integral" => self.solid(1.6),
+            _ if text.chars().all(|c| c.is_ascii_digit() || c == '.') => self.solid(literal(text) * scale),
+            _ => self.solid(text.chars().next().map_or(0.0, |c| letter(text, c)) * scale),
+        }
+    }
+}
+
+fn literal(text: &str) -> f64 {
+    text.chars().map(|c| advance(Face::Regular, c).unwrap_or(0.5)).sum()
+}
+
+/// Advance of a symbol: a slanted letter, a Greek letter by its word, or a mark.
+fn letter(word: &str, first: char) -> f64 {
+    let slanted = match first {
+        'h' if word.len() == 1 => Some('ℎ'),
+        'a'..='z' if word.len() == 1 => char::from_u32(0x1D44E + (u32::from(first) - u32::from('a'))),
+        'A'..='Z' if word.len() == 1 => char::from_u32(0x1D434 + (u32::from(first) - u32::from('A'))),
+        _ if word.len() > 1 => return 0.7,
+        _ => Some(first),
+    };
+    slanted.and_then(|c| advance(Face::Mathematics, c)).unwrap_or(0.7)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::Equation;
+
+    #[test]
+    fn plain_mathematics_is_let_through() {
+        for source in [
+            r#"V_"C" = q L_2 + P"#,
+            r#"frac(q L_"1"^4, 8 E I_"1") + frac(V_"C" L_1^3, 3 E I_1)"#,
+            r#"-(14.00 times frac(5.000^2, 2) + 36.00 times 2.500)"#,
+            r#"1.2 dot 10^(-5) dot abs(psi_"C,G")"#,
+            r#"min(frac(L, 250), 0.02)"#,
+            "a/b <= 3'",
+        ] {
+            assert!(Equation::new(source, "").is_ok(), "{source}: {:?}", Equation::new(source, ""));
+        }
+    }
+
+    #[test]
+    fn anything_else_is_refused() {
+        for source in
+            ["#read(\"x\")", "a $ b", "sys.inputs", "eval(\"1\")", "\\u{41}", "a // b", "a /* b */", "x & y", "image(a)", "\"a"]
+        {
+            assert!(Equation::new(source, "").is_err(), "{source}");
+        }
+    }
+
+    #[test]
+    fn a_longer_equation_is_wider_and_breaks_at_its_signs() {
+        let Ok(short) = Equation::new("a + b", "") else { panic!() };
+        let Ok(long) = Equation::new("a + b + c + d + frac(a + b + c, 2)", "") else { panic!() };
+        assert!(short.width(10.0) > 5.0 && short.width(10.0) < 9.5, "{}", short.width(10.0));
+        assert!(long.width(10.0) > 2.0 * short.width(10.0));
+        assert!(long.widest_part(10.0) < long.width(10.0) / 2.0);
+        assert!(long.is_tall() && !short.is_tall());
+    }
+}

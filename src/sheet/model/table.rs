@@ -1,0 +1,178 @@
+//! Tables of the view model.
+
+use serde::Serialize;
+
+use super::Equation;
+use crate::quantity::{Decimal, Unit};
+use crate::sheet::fonts::{Face, text_width};
+use crate::sheet::page;
+use crate::sheet::typeset;
+
+/// A table: heads, then rows.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct Table {
+    /// Prose above it; may be empty.
+    pub title: String,
+    /// What it holds, for those who do not see it.
+    pub alt: String,
+    /// Whether cells stand at the middle of their row, for rows of equations, rather than at its top.
+    pub middle: bool,
+    /// Columns, left to right.
+    pub columns: Vec<Column>,
+    /// Rows.
+    pub rows: Vec<Row>,
+}
+
+/// A column.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct Column {
+    /// Its head.
+    pub head: Cell,
+    /// Second line of the head: the unit of every figure below; may be empty.
+    pub unit: String,
+    /// Where its cells stand.
+    pub align: Align,
+    /// Width in mm; 0 takes a share of what is left.
+    pub width: f64,
+}
+
+/// Where a cell's text stands.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
+#[serde(rename_all = "snake_case")]
+pub enum Align {
+    /// Text.
+    Left,
+    /// Figures.
+    Right,
+    /// Marks.
+    Centre,
+}
+
+/// A row.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct Row {
+    /// One cell for each column.
+    pub cells: Vec<Cell>,
+    /// Whether it stands in bold.
+    pub bold: bool,
+    /// Whether a rule stands above it.
+    pub rule: bool,
+}
+
+/// What stands in a cell.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+#[serde(tag = "kind", rename_all = "snake_case")]
+pub enum Cell {
+    /// Words as they stand.
+    Text {
+        /// The words; may be empty.
+        text: String,
+    },
+    /// Prose: `v_C` is set as a symbol.
+    Prose {
+        /// The words; may be empty.
+        text: String,
+    },
+    /// A figure of a column that aligns at the point.
+    Figure {
+        /// The figure.
+        text: String,
+        /// White to its right, in ems, that stands for the decimals it lacks against its neighbours.
+        pad: f64,
+    },
+    /// An equation.
+    Equation {
+        /// The equation.
+        equation: Equation,
+    },
+}
+
+impl Cell {
+    /// Words as they stand.
+    pub fn text(text: impl Into<String>) -> Self {
+        Self::Text { text: text.into() }
+    }
+
+    /// Prose: `v_C` is set as a symbol.
+    pub fn prose(text: impl Into<String>) -> Self {
+        Self::Prose { text: text.into() }
+    }
+
+    /// A figure with its unit.
+    pub fn quantity(figure: Decimal, unit: &Unit) -> Self {
+        Self::Text { text: typeset::quantity(figure, unit) }
+    }
+
+    /// Estimated width in mm at a size in pt.
+    pub fn width(&self, size_pt: f64) -> f64 {
+        match self {
+            Self::Text { text } | Self::Prose { text } => text_width(text, Face::Regular, size_pt),
+            Self::Figure { text, pad } => text_width(text, Face::Regular, size_pt) + pad * size_pt * 25.4 / 72.0,
+            Self::Equation { equation } => equation.width(size_pt),
+        }
+    }
+}
+
+/// Figures of one column, aligned at the point.
+pub fn aligned(figures: &[Decimal]) -> Vec<Cell> {
+    let texts: Vec<String> = figures.iter().map(|figure| typeset::figure(*figure)).collect();
+    // A power of ten has no decimals to align.
+    let tail = |text: &str| {
+        if text.contains('·') {
+            return 0.0;
+        }
+        text.split_once('.').map_or(0.0, |(_, decimals)| text_width(".", Face::Regular, 1.0) + text_width(decimals, Face::Regular, 1.0))
+            / crate::sheet::fonts::MM_PER_PT
+    };
+    let longest = texts.iter().map(|text| tail(text)).fold(0.0, f64::max);
+    texts.into_iter().map(|text| Cell::Figure { pad: thousandth(longest - tail(&text)), text }).collect()
+}
+
+fn thousandth(value: f64) -> f64 {
+    (value * 1000.0).round() / 1000.0
+}
+
+impl Column {
+    /// A column of text that takes a share of the width left.
+    pub fn text(head: impl Into<String>) -> Self {
+        Self { head: Cell::text(head), unit: String::new(), align: Align::Left, width: 0.0 }
+    }
+
+    /// A column of figures of one unit, of a width in mm.
+    pub fn figures(head: Cell, unit: &Unit, width: f64) -> Self {
+        Self { head, unit: typeset::unit(unit), align: Align::Right, width }
+    }
+
+    /// The same column with a fixed width in mm.
+    #[must_use]
+    pub fn wide(mut self, width: f64) -> Self {
+        self.width = width;
+        self
+    }
+}
+
+impl Row {
+    /// A plain row.
+    pub fn of(cells: Vec<Cell>) -> Self {
+        Self { cells, bold: false, rule: false }
+    }
+}
+
+impl Table {
+    /// A table without rows yet.
+    pub fn new(title: impl Into<String>, alt: impl Into<String>, columns: Vec<Column>) -> Self {
+        Self { title: title.into(), alt: alt.into(), middle: false, columns, rows: Vec::new() }
+    }
+
+    /// Gives the width that is left to the columns alike, where all of them have a width of their own.
+    pub fn spread(&mut self) {
+        let used: f64 = self.columns.iter().map(|column| column.width).sum();
+        let fixed = self.columns.iter().all(|column| column.width > 0.0);
+        let share = (page::COLUMN - used) / self.columns.len().max(1) as f64;
+        if fixed && share > 0.0 {
+            for column in &mut self.columns {
+                column.width = page::tenth(column.width + share.min(8.0) - 0.05);
+            }
+        }
+    }
+}
