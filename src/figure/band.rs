@@ -125,7 +125,10 @@ pub fn draw(canvas: &mut Canvas, member: &Member, scale: Scale, depths: &Depths,
     while let Some(segment) = member.segments.get(index) {
         let mut last = index;
         if segment.taper.is_none() {
-            while member.segments.get(last + 1).is_some_and(|next| next.taper.is_none() && next.section == segment.section)
+            while member
+                .segments
+                .get(last + 1)
+                .is_some_and(|next| next.taper.is_none() && next.section == segment.section)
             {
                 last += 1;
             }

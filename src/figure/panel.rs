@@ -52,6 +52,8 @@ impl Rise {
 /// Something to name: a point on paper and a label.
 struct Named {
     point: Point,
+    /// Where the label stands first, degrees clockwise from x.
+    towards: f64,
     runs: Vec<Run>,
 }
 
@@ -67,13 +69,13 @@ pub fn panel(canvas: &mut Canvas, panel: &Panel, plot: &Plot, frame: Frame, top:
     }
     let mut named = chords(&mut own, panel, frame, rise);
     for curve in &panel.curves {
-        let points: Vec<Point> =
-            finite(curve).map(|(x, y)| at(frame.x(x), rise.y(y))).collect();
+        let points: Vec<Point> = finite(curve).map(|(x, y)| at(frame.x(x), rise.y(y))).collect();
         own.polyline(points, curve.style.stroke());
         for mark in curve.marks.iter().filter(|mark| mark.x.is_finite() && mark.y.is_finite()) {
             let point = at(frame.x(mark.x), rise.y(mark.y));
             own.circle(point, 0.42, solid(HAIR), Fill::Black);
-            named.push(Named { point, runs: vec![plain(mark.label.clone())] });
+            let towards = if point.y <= rise.axis { -90.0 } else { 90.0 };
+            named.push(Named { point, towards, runs: vec![plain(mark.label.clone())] });
         }
     }
     name_lines(&mut own, panel, frame, rise);
@@ -125,7 +127,8 @@ fn chords(canvas: &mut Canvas, panel: &Panel, frame: Frame, rise: Rise) -> Vec<N
                 canvas.head(to, (0.0, down), 1.4);
                 canvas.head(from, (0.0, -down), 1.4);
             }
-            named.push(Named { point: at(from.x, (from.y + to.y) / 2.0), runs: vec![plain(label.clone())] });
+            let middle = at(from.x, (from.y + to.y) / 2.0);
+            named.push(Named { point: middle, towards: 0.0, runs: vec![plain(label.clone())] });
         }
     }
     named
@@ -163,12 +166,11 @@ fn thousandths(y: f64) -> i64 {
 fn name_points(canvas: &mut Canvas, mut named: Vec<Named>, frame: Frame, rise: Rise, (highest, lowest): (f64, f64)) {
     named.sort_by(|a, b| a.point.x.total_cmp(&b.point.x));
     let before = canvas.items.len();
-    let bounds =
-        Extent { left: 0.0, top: highest - OUTSIDE, right: frame.right + 2.0, bottom: lowest + OUTSIDE };
+    let bounds = Extent { left: 0.0, top: highest - OUTSIDE, right: frame.right + 2.0, bottom: lowest + OUTSIDE };
     let mut field = Field::new(bounds);
     canvas.items.iter().for_each(|item| field.add(item));
     let upwards = |point: Point| point.y <= rise.axis;
-    if named.iter().all(|name| field.place(canvas, name.point, upwards(name.point), &name.runs)) {
+    if named.iter().all(|name| field.place(canvas, name.point, name.towards, &name.runs)) {
         return;
     }
     canvas.items.truncate(before);
@@ -188,8 +190,12 @@ fn name_points(canvas: &mut Canvas, mut named: Vec<Named>, frame: Frame, rise: R
 fn keep_clear(canvas: &mut Canvas, layer: Layer, notes: &[Note]) {
     let texts = canvas.items.iter().filter(|item| matches!(item, Item::Text { .. }));
     let others: Vec<Extent> = texts.map(Extent::of).filter(|extent| extent.left < layer.right + 1.0).collect();
-    let edge = others.iter().fold(layer.edge, |edge, other| {
-        if layer.up { edge.min(other.top - 3.0) } else { edge.max(other.bottom + 1.0) }
-    });
+    let edge =
+        others.iter().fold(
+            layer.edge,
+            |edge, other| {
+                if layer.up { edge.min(other.top - 3.0) } else { edge.max(other.bottom + 1.0) }
+            },
+        );
     annotate(canvas, notes, Layer { edge, ..layer });
 }

@@ -152,7 +152,11 @@ impl Symbol {
         }
         let wall = x + away * (2.0 * radius + 1.5 * NORMAL);
         let (low, high) = (at(wall, y + reach + 0.5), at(wall, y - reach - 0.5));
-        if away < 0.0 { canvas.ground(low, high) } else { canvas.ground(high, low) }
+        if away < 0.0 {
+            canvas.ground(low, high)
+        } else {
+            canvas.ground(high, low)
+        }
         y + reach + 0.9
     }
 

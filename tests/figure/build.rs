@@ -165,7 +165,8 @@ pub fn crowded() -> Member {
         .map(|(index, code)| support(&format!("Support_{index}"), &format!("{}", index * 6), *code))
         .collect();
     let mut member = member(sections, &segments, supports, &[("H1", "4"), ("H2", "40.5")]);
-    let mut loads: Vec<LoadKind> = (0..18).map(|i| point(&format!("{}.25", 10 + i), &format!("{:.1}", 1.1 + f64::from(i) * 2.3))).collect();
+    let mut loads: Vec<LoadKind> =
+        (0..18).map(|i| point(&format!("{}.25", 10 + i), &format!("{:.1}", 1.1 + f64::from(i) * 2.3))).collect();
     loads.extend((0..6).map(|i| uniform(&format!("{}.5", i + 1), &format!("{}", i * 6), &format!("{}", i * 6 + 9))));
     loads.extend([couple("12.5", "6"), couple("-3", "13"), couple("4", "13.01")]);
     loads.extend([settlement(3, "4"), rotation(5, "-2"), area("3.5", "2.4", "0", "48")]);
