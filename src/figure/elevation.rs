@@ -56,8 +56,8 @@ fn scale_note(factor: Option<f64>) -> String {
     match factor {
         None => "Lengths to scale, depths not to scale.".to_owned(),
         Some(1.0) => "Lengths and depths to one scale.".to_owned(),
-        Some(factor) if factor > 1.0 => format!("Lengths to scale, depths {factor:.0} times as large."),
-        Some(factor) => format!("Lengths to scale, depths 1/{:.0} as large.", 1.0 / factor),
+        Some(factor) if factor > 1.0 => format!("Lengths to scale, depths at {factor:.0} times that scale."),
+        Some(factor) => format!("Lengths to scale, depths at 1/{:.0} of that scale.", 1.0 / factor),
     }
 }
 

@@ -141,14 +141,14 @@ impl Sketch<'_> {
         let mut notes: Vec<Note> = away;
         let mut tail = base;
         for (place, _) in self.points() {
-            let stands = self.stands(placed, self.x(place), base);
+            let stands = self.stands(placed, place);
             tail = tail.min(stands - SHAFT);
         }
         // Above every strip that a label could meet.
         tail = tail.min(highest - 3.4);
         for (place, kind) in self.points() {
             let x = self.x(place);
-            let stands = self.stands(placed, x, base);
+            let stands = self.stands(placed, place);
             let (top, tip) = (at(x, tail), at(x, stands));
             let down = matches!(kind, LoadKind::Point { p, .. } if p.value.si() >= 0.0);
             let (from, to) = if down { (top, tip) } else { (tip, top) };
@@ -158,9 +158,9 @@ impl Sketch<'_> {
         annotate(canvas, &notes, Layer { edge: tail, up: true, left: 0.0, right: self.width, beside: true });
     }
 
-    /// y of what a force at x stands on: the highest strip there, else the member.
-    fn stands(&self, placed: &[Placed], x: f64, base: f64) -> f64 {
-        let member = (-self.depths.greatest(self.member) - 0.3).max(base);
+    /// y of what a force stands on: the highest strip there, else the member.
+    fn stands(&self, placed: &[Placed], place: Place) -> f64 {
+        let (x, member) = (self.x(place), -self.depths.half_at(self.member, place.x()) - 0.3);
         placed.iter().filter_map(|strip| strip.line(x)).fold(member, |top, line| top.min(line - 0.15))
     }
 

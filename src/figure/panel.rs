@@ -4,7 +4,7 @@ use super::canvas::{Canvas, Extent, HAIR, LABEL, NORMAL, dashed, plain, solid, s
 use super::measure;
 use super::place::Field;
 use super::plot::{Curve, KEY, Panel, Plot};
-use super::primitive::{Anchor, Dash, Fill, Item, Point, Run, at};
+use super::primitive::{Anchor, Dash, Fill, Point, Run, at};
 use super::rows::{Layer, Note, annotate, spread};
 
 /// Height of a panel's values, mm.
@@ -180,22 +180,21 @@ fn name_points(canvas: &mut Canvas, mut named: Vec<Named>, frame: Frame, rise: R
             .filter(|name| upwards(name.point) == up)
             .map(|name| Note { x: name.point.x, start: Some(name.point.y), runs: name.runs.clone() })
             .collect();
-        let edge = if up { highest - 3.6 } else { lowest + 1.0 };
-        let layer = Layer { edge, up, left: 0.0, right: frame.right + 2.0, beside: true };
+        let edge = if up { highest - 3.0 } else { lowest + 0.6 };
+        // Short of the leaders to the names of lines.
+        let layer = Layer { edge, up, left: 0.0, right: frame.right + 0.2, beside: true };
         keep_clear(canvas, layer, &notes);
     }
 }
 
-/// Places a layer clear of the names of lines, which may reach above or below the values.
+/// Places a layer clear of leaders to the names of lines that end early, which may reach above or below the values.
 fn keep_clear(canvas: &mut Canvas, layer: Layer, notes: &[Note]) {
-    let texts = canvas.items.iter().filter(|item| matches!(item, Item::Text { .. }));
-    let others: Vec<Extent> = texts.map(Extent::of).filter(|extent| extent.left < layer.right + 1.0).collect();
-    let edge =
-        others.iter().fold(
-            layer.edge,
-            |edge, other| {
-                if layer.up { edge.min(other.top - 3.0) } else { edge.max(other.bottom + 1.0) }
-            },
-        );
+    let others = canvas.items.iter().map(Extent::of).filter(|extent| extent.left < layer.right + 0.2);
+    let edge = others.fold(
+        layer.edge,
+        |edge, other| {
+            if layer.up { edge.min(other.top - 2.6) } else { edge.max(other.bottom + 0.4) }
+        },
+    );
     annotate(canvas, notes, Layer { edge, ..layer });
 }

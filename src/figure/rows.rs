@@ -43,7 +43,7 @@ pub struct Layer {
 }
 
 /// Clear paper between labels of one row, mm.
-const GAP: f64 = 1.1;
+const GAP: f64 = 1.8;
 /// Clear paper between a pole and its label, mm.
 const BESIDE: f64 = 0.9;
 /// Least distance of poles, mm.

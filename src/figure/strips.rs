@@ -145,7 +145,7 @@ impl Taken {
         let overlap = |a: (f64, f64), b: (f64, f64), gap: f64| a.0 < b.1 + gap && b.0 < a.1 + gap;
         let clash = |labels: &[(f64, f64)], others: &Self| {
             labels.iter().any(|label| {
-                overlap(*label, others.strip, 0.5) || others.labels.iter().any(|theirs| overlap(*label, *theirs, 0.9))
+                overlap(*label, others.strip, 0.8) || others.labels.iter().any(|theirs| overlap(*label, *theirs, 0.9))
             })
         };
         overlap(self.strip, other.strip, -0.05) || clash(&self.labels, other) || clash(&other.labels, self)

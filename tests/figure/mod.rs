@@ -133,3 +133,16 @@ fn alternative_texts_say_what_is_shown() {
     let released = figure::released(&member, &[Force(1)], &said(), COLUMN).alt;
     assert!(released.contains("R.B, the upward force of support B"), "{released}");
 }
+
+#[test]
+fn ordinary_members_are_clean() {
+    for (name, member) in [("three", build::three_spans()), ("tapered", build::tapered())] {
+        let said = all_cuts(&member);
+        clean(&format!("{name}-elevation"), &figure::elevation(&member, &said, COLUMN));
+        for (index, case) in member.cases.iter().enumerate() {
+            clean(&format!("{name}-loads-{}", case.name), &figure::loads(&member, index, &Words::default(), COLUMN));
+        }
+        clean(&format!("{name}-released"), &figure::released(&member, &[Moment(1)], &said, COLUMN));
+        clean(&format!("{name}-bodies"), &figure::free_bodies(&member, &said, COLUMN));
+    }
+}
