@@ -4,16 +4,19 @@
 //! apart or found equal without a tolerance. Spans, pieces and names have been resolved to indices; every index kept
 //! here is within its list, and lists of supports, hinges and segments are ordered from left to right.
 
+pub mod build;
 mod load;
 mod place;
 
 pub use load::{Case, Load, LoadKind, Nature, Stretch};
 pub use place::Place;
 
+use std::collections::BTreeMap;
+
 use crate::diagnostic::Diagnostic;
 use crate::quantity::{
     Area, Density, Expansion, Given, Intensity, Length, LinearMass, RotationalStiffness, SecondMoment, SpecificWeight,
-    Stress,
+    Stress, Typed,
 };
 
 /// A member with everything that acts on it and everything that is asked of it.
@@ -41,6 +44,8 @@ pub struct Member {
     pub spans: Vec<Span>,
     /// Allowable deflections, in the deck's order.
     pub limits: Vec<Limit>,
+    /// Every place that the deck typed, as first typed; ends of segments come from their lengths instead.
+    pub typed_places: BTreeMap<Place, Typed>,
     /// What is lawful but odd; also printed on the sheet.
     pub warnings: Vec<Diagnostic>,
 }

@@ -2,6 +2,16 @@
 //!
 //! Sheet, results and review print these steps and nothing else.
 
+mod draft;
+mod exact;
+mod finish;
+mod name;
+mod narrate;
+mod notation;
 mod step;
+mod trace;
+mod units;
 
+pub use draft::Mismatch;
+pub use narrate::{Demand, narrate};
 pub use step::{Block, Body, Chapter, Chapters, Figure, Input, Origin, Step, Working};

@@ -7,6 +7,9 @@ use crate::quantity::{Decimal, Unit};
 pub struct Working {
     /// Significant figures carried.
     pub figures: u32,
+    /// Whether that many figures keep every final figure within half a unit of its fourth digit; `false` where the release
+    /// was badly chosen, which the sheet says.
+    pub settled: bool,
     /// Every step, in the order shown.
     pub steps: Vec<Step>,
     /// The steps grouped into chapters and blocks, in the order shown.
