@@ -120,6 +120,7 @@ pub fn member(
         combinations: Vec::new(),
         spans: Vec::new(),
         limits: Vec::new(),
+        typed_places: std::collections::BTreeMap::new(),
         warnings: Vec::new(),
     }
 }

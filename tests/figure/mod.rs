@@ -146,3 +146,14 @@ fn ordinary_members_are_clean() {
         clean(&format!("{name}-bodies"), &figure::free_bodies(&member, &said, COLUMN));
     }
 }
+
+#[test]
+fn a_member_read_from_a_deck_is_drawn_clean() {
+    let member = proofspan::member::build::read(proofspan::deck::starter()).unwrap().member;
+    let said = all_cuts(&member);
+    clean("starter-elevation", &figure::elevation(&member, &said, COLUMN));
+    for (index, case) in member.cases.iter().enumerate() {
+        clean(&format!("starter-loads-{}", case.name), &figure::loads(&member, index, &said, COLUMN));
+    }
+    clean("starter-bodies", &figure::free_bodies(&member, &said, COLUMN));
+}
