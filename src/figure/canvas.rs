@@ -15,7 +15,7 @@ pub const HAIR: f64 = 0.12;
 pub const LABEL: f64 = 7.5;
 /// Distance of baselines of stacked labels, mm.
 pub const ROW: f64 = 3.4;
-/// Paper left around a drawing, mm.
+/// Paper left above and below a drawing, mm.
 const MARGIN: f64 = 0.6;
 
 /// A solid stroke.
@@ -144,14 +144,14 @@ impl Canvas {
         self.items.iter().map(Extent::of).reduce(Extent::with)
     }
 
-    /// Crops to what is drawn, moves it to the origin, rounds. The drawing is `width` wide, or wider where need be; what
-    /// stands at x = 0 stands `MARGIN` from its left edge unless something reaches further left.
+    /// Crops the height to what is drawn, moves it to the origin, rounds. The drawing is `width` wide, or wider where
+    /// something reaches beyond either side.
     pub fn finish(self, width: f64, alt: String) -> Drawing {
         let extent = self.extent().unwrap_or(Extent { left: 0.0, top: 0.0, right: 0.0, bottom: 0.0 });
-        let (dx, dy) = ((MARGIN - extent.left).max(0.0), MARGIN - extent.top);
+        let (dx, dy) = ((-extent.left).max(0.0), MARGIN - extent.top);
         let items = self.items.into_iter().map(|item| shifted(item, dx, dy)).collect();
         Drawing {
-            width: thousandth(width.max(extent.right + dx + MARGIN)),
+            width: thousandth(width.max(extent.right + dx)),
             height: thousandth(extent.bottom + dy + MARGIN),
             alt,
             items,
@@ -175,12 +175,8 @@ pub struct Extent {
 impl Extent {
     /// The smallest rectangle around points.
     pub fn around<'a>(points: impl IntoIterator<Item = &'a Point>) -> Self {
-        let none = Self {
-            left: f64::INFINITY,
-            top: f64::INFINITY,
-            right: f64::NEG_INFINITY,
-            bottom: f64::NEG_INFINITY,
-        };
+        let none =
+            Self { left: f64::INFINITY, top: f64::INFINITY, right: f64::NEG_INFINITY, bottom: f64::NEG_INFINITY };
         points.into_iter().fold(none, |sum, p| sum.with(Self { left: p.x, top: p.y, right: p.x, bottom: p.y }))
     }
 
@@ -212,9 +208,7 @@ impl Extent {
             Item::Polygon { points, stroke, .. } => {
                 Self::around(points).grown(stroke.map_or(0.0, |stroke| stroke.weight / 2.0))
             }
-            Item::Circle { centre, radius, stroke, .. } => {
-                Self::around([centre]).grown(radius + stroke.weight / 2.0)
-            }
+            Item::Circle { centre, radius, stroke, .. } => Self::around([centre]).grown(radius + stroke.weight / 2.0),
             Item::Arc { stroke, .. } => {
                 let curves = item.curves();
                 Self::around(curves.iter().flatten()).grown(stroke.weight / 2.0)
@@ -241,7 +235,12 @@ pub fn text_box(place: Point, anchor: Anchor, width: f64, (above, below): (f64, 
             bottom: place.y + before,
         }
     } else {
-        Extent { left: place.x - before, right: place.x - before + width, top: place.y - above, bottom: place.y + below }
+        Extent {
+            left: place.x - before,
+            right: place.x - before + width,
+            top: place.y - above,
+            bottom: place.y + below,
+        }
     }
 }
 
@@ -250,9 +249,7 @@ pub fn shifted(item: Item, dx: f64, dy: f64) -> Item {
     let go = |p: Point| rounded(at(p.x + dx, p.y + dy));
     match item {
         Item::Line { from, to, stroke } => Item::Line { from: go(from), to: go(to), stroke },
-        Item::Polyline { points, stroke } => {
-            Item::Polyline { points: points.into_iter().map(go).collect(), stroke }
-        }
+        Item::Polyline { points, stroke } => Item::Polyline { points: points.into_iter().map(go).collect(), stroke },
         Item::Polygon { points, stroke, fill } => {
             Item::Polygon { points: points.into_iter().map(go).collect(), stroke, fill }
         }

@@ -136,12 +136,8 @@ fn chords(item: &Item) -> Vec<(Point, Point)> {
 /// Whether a straight line enters a rectangle (clipping by parameters, after Liang and Barsky).
 pub fn crosses(area: Extent, from: Point, to: Point) -> bool {
     let (dx, dy) = (to.x - from.x, to.y - from.y);
-    let sides = [
-        (-dx, from.x - area.left),
-        (dx, area.right - from.x),
-        (-dy, from.y - area.top),
-        (dy, area.bottom - from.y),
-    ];
+    let sides =
+        [(-dx, from.x - area.left), (dx, area.right - from.x), (-dy, from.y - area.top), (dy, area.bottom - from.y)];
     let (mut enter, mut leave) = (0.0_f64, 1.0_f64);
     for (direction, distance) in sides {
         if direction == 0.0 {

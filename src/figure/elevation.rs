@@ -35,8 +35,9 @@ pub fn elevation(member: &Member, said: &Words, width: f64) -> Drawing {
     let (top, low) = extent.map_or((0.0, 0.0), |extent| (extent.top, extent.bottom));
     let above = segment_notes(member, said, scale, &depths);
     annotate(&mut canvas, &above, Layer { edge: top - 0.5, up: true, left: 0.0, right: width, beside: false });
-    let below = name_notes(member, said, scale, &depths, |_| String::new());
-    let low = annotate(&mut canvas, &below, Layer { edge: low + 0.2, up: false, left: 0.0, right: width, beside: false });
+    let below = name_notes(member, said, scale, &depths);
+    let low =
+        annotate(&mut canvas, &below, Layer { edge: low + 0.2, up: false, left: 0.0, right: width, beside: false });
     let low = dimensions(&mut canvas, member, scale, low, width);
     let note = scale_note(depths.factor);
     canvas.text(at(LEFT, low + 1.2 + ROW), Anchor::Start, vec![plain(note.clone())]);
@@ -55,8 +56,8 @@ fn scale_note(factor: Option<f64>) -> String {
     match factor {
         None => "Lengths to scale, depths not to scale.".to_owned(),
         Some(1.0) => "Lengths and depths to one scale.".to_owned(),
-        Some(factor) if factor > 1.0 => format!("Lengths to scale, depths {factor:.0} times as large."),
-        Some(factor) => format!("Lengths to scale, depths 1/{:.0} as large.", 1.0 / factor),
+        Some(factor) if factor > 1.0 => format!("Lengths to scale, depths at {factor:.0} times that scale."),
+        Some(factor) => format!("Lengths to scale, depths at 1/{:.0} of that scale.", 1.0 / factor),
     }
 }
 
@@ -107,19 +108,13 @@ fn segment_notes(member: &Member, said: &Words, scale: Scale, depths: &Depths) -
     notes
 }
 
-/// Names of supports, with their stiffnesses and whatever `more` adds, and names of cuts between them.
-pub fn name_notes(
-    member: &Member,
-    said: &Words,
-    scale: Scale,
-    depths: &Depths,
-    more: impl Fn(usize) -> String,
-) -> Vec<Note> {
-    let one = |(index, support): (usize, &Support)| {
-        let text = format!("{}{}{}", support.name, springs(support, member), more(index));
+/// Names of supports, with their stiffnesses, and names of cuts between them; supports first, in their order.
+pub fn name_notes(member: &Member, said: &Words, scale: Scale, depths: &Depths) -> Vec<Note> {
+    let one = |support: &Support| {
+        let text = format!("{}{}", support.name, springs(support, member));
         Note::new(scale.x(support.at.x()), vec![plain(text)])
     };
-    let mut notes: Vec<Note> = member.supports.iter().enumerate().map(one).collect();
+    let mut notes: Vec<Note> = member.supports.iter().map(one).collect();
     for cut in &said.cuts {
         let taken = member.supports.iter().any(|support| (support.at.x() - cut.at).abs() < 1e-9);
         if !taken {
@@ -172,14 +167,7 @@ pub fn between(places: &[Place], member: &Member) -> Vec<Vec<Run>> {
 }
 
 /// A chain through places along the member.
-pub fn chain_of(
-    canvas: &mut Canvas,
-    places: &[Place],
-    labels: Vec<Vec<Run>>,
-    scale: Scale,
-    y: f64,
-    width: f64,
-) -> f64 {
+pub fn chain_of(canvas: &mut Canvas, places: &[Place], labels: Vec<Vec<Run>>, scale: Scale, y: f64, width: f64) -> f64 {
     let ticks: Vec<f64> = places.iter().map(|place| scale.x(place.x())).collect();
     chain(canvas, y, &ticks, labels, 0.0, width)
 }

@@ -39,14 +39,12 @@ pub fn chained(width: f64) -> Drawing {
     // The turn, as an angle at the wall.
     let radius = 26.0;
     let sweep = libm::atan(slope).to_degrees();
-    canvas.items.push(super::Item::Arc {
-        centre: at(left, shift),
-        radius,
-        start: 0.0,
-        sweep,
-        stroke: solid(LIGHT),
-    });
-    canvas.text(at(left + radius + 1.6, shift + slope * radius * 0.5 + 0.75), Anchor::Start, vec![symbol("ψ"), sub("1")]);
+    canvas.items.push(super::Item::Arc { centre: at(left, shift), radius, start: 0.0, sweep, stroke: solid(LIGHT) });
+    canvas.text(
+        at(left + radius + 1.6, shift + slope * radius * 0.5 + 0.75),
+        Anchor::Start,
+        vec![symbol("ψ"), sub("1")],
+    );
     measured(&mut canvas, left - 4.5, 0.0, shift);
     canvas.text(at(left - 6.2, shift / 2.0 + 0.9), Anchor::End, vec![symbol("v"), sub("1")]);
     span(&mut canvas, left, right, -4.0);
@@ -123,12 +121,8 @@ const BAR: f64 = 8.0;
 
 fn bar(canvas: &mut Canvas, centre: Point, half: f64) {
     let (left, right) = (centre.x - half, centre.x + half);
-    let corners = vec![
-        at(left, centre.y - 0.9),
-        at(right, centre.y - 0.9),
-        at(right, centre.y + 0.9),
-        at(left, centre.y + 0.9),
-    ];
+    let corners =
+        vec![at(left, centre.y - 0.9), at(right, centre.y - 0.9), at(right, centre.y + 0.9), at(left, centre.y + 0.9)];
     canvas.polygon(corners, Some(solid(NORMAL)), Fill::None);
 }
 

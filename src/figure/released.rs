@@ -32,10 +32,8 @@ pub fn released(member: &Member, redundants: &[Redundant], said: &Words, width: 
     for (index, support) in member.supports.iter().enumerate() {
         let node = at(scale.x(support.at.x()), 0.0);
         let half = depths.half_at(member, support.at.x());
-        let (force, moment) = (
-            redundants.contains(&Redundant::Force(index)),
-            redundants.contains(&Redundant::Moment(index)),
-        );
+        let (force, moment) =
+            (redundants.contains(&Redundant::Force(index)), redundants.contains(&Redundant::Moment(index)));
         let whole = Symbol::of(member, support, node, half, size);
         low = low.max(remaining(&mut canvas, whole, force, moment));
         if force {
@@ -52,7 +50,7 @@ pub fn released(member: &Member, redundants: &[Redundant], said: &Words, width: 
     let upper = Layer { edge: top, up: true, left: 0.0, right: width, beside: false };
     annotate(&mut canvas, &moments, upper);
     // Names stay near the member; the forces' symbols stand at the tails of their arrows.
-    let mut below = name_notes(member, said, scale, &depths, |_| String::new());
+    let mut below = name_notes(member, said, scale, &depths);
     for note in notes(member, redundants, scale, |redundant| matches!(redundant, Redundant::Force(_))) {
         match below.iter_mut().find(|name| (name.x - note.x).abs() < 0.01) {
             Some(name) => {
@@ -103,12 +101,7 @@ pub fn name(member: &Member, redundant: Redundant) -> Vec<Run> {
     vec![symbol(letter), sub(support)]
 }
 
-fn notes(
-    member: &Member,
-    redundants: &[Redundant],
-    scale: Scale,
-    wanted: impl Fn(&Redundant) -> bool,
-) -> Vec<Note> {
+fn notes(member: &Member, redundants: &[Redundant], scale: Scale, wanted: impl Fn(&Redundant) -> bool) -> Vec<Note> {
     let note = |redundant: &Redundant| {
         let support = member.supports.get(redundant.support())?;
         Some(Note::new(scale.x(support.at.x()), name(member, *redundant)))
