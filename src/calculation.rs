@@ -5,9 +5,10 @@ use sha2::{Digest, Sha256};
 use crate::analysis::stability::{self, BadChoice, Mechanism, Movement};
 use crate::analysis::{self, Analysis};
 use crate::crosscheck::{self, Row};
-use crate::diagnostic::Diagnostic;
+use crate::diagnostic::{Diagnostic, Severity};
 use crate::member::build::{self, Reading};
 use crate::member::{Member, Place};
+use crate::quantity::{Decimal, Length, Physical, parse_quantity};
 use crate::results::{self, Agreement};
 use crate::verdict::{self, Verdict};
 use crate::working::{self, Demand, Mismatch, Working};
@@ -44,7 +45,18 @@ impl Calculation {
     /// # Errors
     /// Faults of the deck; disagreement of the crosschecks; a fault of the program.
     pub fn new(text: &str) -> Result<Self, Fault> {
-        let member = member(text).map_err(Fault::Input)?;
+        Self::with_stations(text, &[])
+    }
+
+    /// The same with further stations, each typed as a length.
+    ///
+    /// # Errors
+    /// As [`Self::new`]; a station that is no length on the member.
+    pub fn with_stations(text: &str, stations: &[String]) -> Result<Self, Fault> {
+        let mut member = member(text).map_err(Fault::Input)?;
+        for station in stations {
+            add_station(&mut member, station)?;
+        }
         let analysis = analysis::solve(&member)
             .ok_or_else(|| Fault::Program("the equations of compatibility could not be solved".to_owned()))?;
         let verdict = verdict::weigh(&member, &analysis);
@@ -80,6 +92,34 @@ impl Calculation {
     pub fn json(&self, working: Option<&Working>) -> serde_json::Value {
         results::json(&self.member, &self.analysis, &self.verdict, self.agreement, &self.deck_sha256, working)
     }
+}
+
+fn add_station(member: &mut Member, text: &str) -> Result<(), Fault> {
+    let refused = |message: String| {
+        let finding = Diagnostic {
+            severity: Severity::Error,
+            span: None,
+            message,
+            hint: "a station is a length from the left end, as in \"2.5 m\"".to_owned(),
+        };
+        Fault::Input(vec![finding])
+    };
+    let typed = parse_quantity(text).map_err(|fault| refused(format!("station \"{text}\": {}", fault.message)))?;
+    let exact = typed.terms.iter().try_fold(Decimal::ZERO, |sum, term| {
+        let length = term.unit.dimension() == Length::DIMENSION;
+        length.then_some(())?;
+        sum.plus(term.figure.times(term.unit.size()?.0)?)
+    });
+    let place = exact.map(|exact| Place::metres(exact.trimmed()));
+    let Some(place) = place.filter(|place| *place >= Place::ZERO && *place <= member.end()) else {
+        return Err(refused(format!("station \"{text}\" is no place on the member")));
+    };
+    if !member.stations.contains(&place) {
+        member.stations.push(place);
+        member.stations.sort_unstable();
+        member.typed_places.entry(place).or_insert(typed);
+    }
+    Ok(())
 }
 
 fn differing(mismatches: &[Mismatch]) -> String {

@@ -43,9 +43,8 @@ impl Face {
 static FACES: LazyLock<Vec<ttf_parser::Face<'static>>> =
     LazyLock::new(|| FILES.iter().filter_map(|bytes| ttf_parser::Face::parse(bytes, 0).ok()).collect());
 
-static FONTS: LazyLock<Vec<Font>> = LazyLock::new(|| {
-    FILES.iter().filter_map(|bytes| Font::new(Bytes::new(*bytes), 0)).collect()
-});
+static FONTS: LazyLock<Vec<Font>> =
+    LazyLock::new(|| FILES.iter().filter_map(|bytes| Font::new(Bytes::new(*bytes), 0)).collect());
 
 static BOOK: LazyLock<LazyHash<FontBook>> = LazyLock::new(|| LazyHash::new(FontBook::from_fonts(FONTS.iter())));
 
@@ -122,8 +121,22 @@ mod tests {
             for digit in '1'..='9' {
                 assert_eq!(advance(face, digit), zero, "{digit}");
             }
-            eprintln!("{face:?} 0={zero:?} fig={:?} punct={:?} .={:?} thin={:?} nnbsp={:?} minus={:?} nbsp={:?}", advance(face, '\u{2007}'), advance(face, '\u{2008}'), advance(face, '.'), advance(face, '\u{2009}'), advance(face, '\u{202f}'), advance(face, '\u{2212}'), advance(face,'\u{a0}'));
-            for c in "⁻¹²³⁴⁵≤≥√×·ψαδηΔΣ–—‘’“”°µ≈±→↑↓⁰⁶⁷⁸⁹½€£".chars() { if advance(face, c).is_none() { eprintln!("none {c}"); } }
+            eprintln!(
+                "{face:?} 0={zero:?} fig={:?} punct={:?} .={:?} thin={:?} nnbsp={:?} minus={:?} nbsp={:?}",
+                advance(face, '\u{2007}'),
+                advance(face, '\u{2008}'),
+                advance(face, '.'),
+                advance(face, '\u{2009}'),
+                advance(face, '\u{202f}'),
+                advance(face, '\u{2212}'),
+                advance(face, '\u{a0}')
+            );
+            for c in "⁻¹²³⁴⁵≤≥√×·ψαδηΔΣ–—‘’“”°µ≈±→↑↓⁰⁶⁷⁸⁹½€£".chars()
+            {
+                if advance(face, c).is_none() {
+                    eprintln!("none {c}");
+                }
+            }
         }
     }
 

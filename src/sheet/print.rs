@@ -2,10 +2,10 @@
 
 use minijinja::value::{Serde, Value};
 use serde::Serialize;
+use typst::WorldExt;
 use typst::diag::{SourceDiagnostic, Warned};
 use typst::foundations::{Bytes, Dict, Smart, Value as Data};
 use typst::syntax::DiagSpanKind;
-use typst::WorldExt;
 use typst_layout::PagedDocument;
 use typst_pdf::{PdfOptions, PdfStandard, PdfStandards};
 

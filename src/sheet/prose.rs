@@ -123,7 +123,8 @@ fn symbol(text: &str) -> Option<(&str, String, &str)> {
         None => (word, String::new()),
     };
     let greek = GREEK.iter().find(|(name, _)| *name == base).map(|(_, letter)| *letter);
-    let letters = matches!(base, "EI" | "GA" | "qw") || (base.len() == 1 && base.starts_with(|c: char| c.is_ascii_alphabetic()));
+    let letters =
+        matches!(base, "EI" | "GA" | "qw") || (base.len() == 1 && base.starts_with(|c: char| c.is_ascii_alphabetic()));
     // A letter that stands alone is a word or a name; only with a subscript is it surely a symbol.
     let sure = !sub.is_empty() || matches!(base, "EI" | "GA" | "psi" | "dT");
     let shown = match (greek, base) {

@@ -2,8 +2,8 @@
 
 use std::collections::BTreeMap;
 
-use minijinja::value::{Serde, Value};
 use minijinja::syntax::SyntaxConfig;
+use minijinja::value::{Serde, Value};
 use minijinja::{AutoEscape, Environment, Error, ErrorKind, Output, State, UndefinedBehavior};
 
 use super::drawing::{self, plain};
@@ -61,9 +61,7 @@ impl Templates {
                 *file = text.into();
                 Ok(())
             }
-            None => {
-                Err(Fault::UnknownTemplate { name: name.to_owned(), known: self.files.keys().cloned().collect() })
-            }
+            None => Err(Fault::UnknownTemplate { name: name.to_owned(), known: self.files.keys().cloned().collect() }),
         }
     }
 
@@ -151,11 +149,7 @@ fn fault(error: Error) -> Fault {
     if error.kind() == ErrorKind::UndefinedError {
         message = format!("undefined value: {error}");
     }
-    Fault::Template {
-        file: error.name().unwrap_or(MAIN).to_owned(),
-        line: error.line().unwrap_or_default(),
-        message,
-    }
+    Fault::Template { file: error.name().unwrap_or(MAIN).to_owned(), line: error.line().unwrap_or_default(), message }
 }
 
 /// The words of the templates.

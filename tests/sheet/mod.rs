@@ -18,7 +18,6 @@ fn the_sample_prints_without_a_warning() {
     assert!(printed.pages > 8, "{}", printed.pages);
 }
 
-
 #[test]
 fn a_composed_sheet_prints() {
     let printed = print(&real::model(&real::propped()), &sample::options()).unwrap_or_else(|fault| panic!("{fault}"));

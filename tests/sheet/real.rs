@@ -1,9 +1,9 @@
 //! A member put together by hand, solved and narrated: a working as the program writes it.
 
 use proofspan::analysis;
+use proofspan::figure::{Cut, Plot, Words};
 use proofspan::member::*;
 use proofspan::quantity::Decimal;
-use proofspan::figure::{Cut, Plot, Words};
 use proofspan::sheet::model::{Findings, Parts};
 use proofspan::sheet::{Model, Templates};
 use proofspan::working::{Demand, Working, narrate};

@@ -5,8 +5,8 @@ use proofspan::figure::primitive::at;
 use proofspan::figure::{Anchor, Dash, Drawing, Fill, Item, Run, Stroke};
 use proofspan::quantity::{Decimal, Unit};
 use proofspan::sheet::model::{
-    Align, Annex, Answer, Cell, Checks, Column, Document, Figure, Given, Method, Picture, Row, Running, Signature, Sums,
-    Table, Trust, aligned, chapters,
+    Align, Annex, Answer, Cell, Checks, Column, Document, Figure, Given, Method, Picture, Row, Running, Signature,
+    Sums, Table, Trust, aligned, chapters,
 };
 use proofspan::sheet::{Attachments, Model, Options, Templates};
 use proofspan::working::{Block, Body, Chapter, Chapters, Figure as Found, Input, Origin, Step, Working};
@@ -110,9 +110,7 @@ macro_rules! says {
 }
 
 pub fn working() -> Working {
-    let mut w = Writer {
-        working: Working { figures: 4, settled: true, steps: Vec::new(), chapters: Vec::new() },
-    };
+    let mut w = Writer { working: Working { figures: 4, settled: true, steps: Vec::new(), chapters: Vec::new() } };
     w.chapter(Chapters::Given, "Figures of the input in kN and m");
     w.block(
         "Conversions from the units typed to those of the working.",
@@ -171,7 +169,9 @@ pub fn working() -> Working {
         None,
         false,
     );
-    for (index, (case, title)) in [("G", "Permanent load"), ("Q", "Imposed load"), ("S", "Settlement of B")].iter().enumerate() {
+    for (index, (case, title)) in
+        [("G", "Permanent load"), ("Q", "Imposed load"), ("S", "Settlement of B")].iter().enumerate()
+    {
         w.chapter(Chapters::Case(index), &format!("Load case {case} on the released member: {title}"));
         w.block(
             "Equilibrium of the piece C–B gives the force and the moment at the cut.",
@@ -227,7 +227,12 @@ pub fn working() -> Working {
     w.chapter(Chapters::Sums, "Sums over the cases");
     for (name, base) in [("R_A", 97), ("R_B", 64), ("M_A", 224)] {
         let rows: Vec<(String, String)> = (1..=4)
-            .map(|c| (format!("1.35 times {base}.92 + {c} times {base}.50 + 0 times 1.250"), format!("{}.37", base * (c + 1))))
+            .map(|c| {
+                (
+                    format!("1.35 times {base}.92 + {c} times {base}.50 + 0 times 1.250"),
+                    format!("{}.37", base * (c + 1)),
+                )
+            })
             .collect();
         let said: Vec<Said> = rows
             .iter()
@@ -240,12 +245,25 @@ pub fn working() -> Working {
                 inputs: &["R_A", "R_B", "M_A"],
             })
             .collect();
-        w.block(&format!("{name} in every combination: factors times cases."), &["Superposition"], &said, Some("C1"), true);
+        w.block(
+            &format!("{name} in every combination: factors times cases."),
+            &["Superposition"],
+            &said,
+            Some("C1"),
+            true,
+        );
     }
     let rows: Vec<String> = (0..14).map(|place| format!("{}", 12345 + place * 1111)).collect();
     let said: Vec<Said> = rows
         .iter()
-        .map(|result| Said { symbol: "M_x", math: "M - V x", numbers: "1 - 1 times 2", result, unit: "kN m", inputs: &["M_A", "R_A", "L_1"] })
+        .map(|result| Said {
+            symbol: "M_x",
+            math: "M - V x",
+            numbers: "1 - 1 times 2",
+            result,
+            unit: "kN m",
+            inputs: &["M_A", "R_A", "L_1"],
+        })
         .collect();
     w.block("Moments at the stations.", &[], &said, Some("C1"), true);
     w.chapter(Chapters::Checks, "What is allowed against what was found");
@@ -281,10 +299,22 @@ pub fn drawing() -> Drawing {
     let thin = stroke(0.15, Dash::Solid);
     let heavy = stroke(0.4, Dash::Solid);
     let mut items = vec![
-        Item::Polygon { points: vec![at(5.0, 18.0), at(50.0, 18.0), at(50.0, 23.0), at(5.0, 23.0)], stroke: Some(heavy), fill: Fill::Hatch { angle: 45.0, spacing: 1.2 } },
-        Item::Polygon { points: vec![at(50.0, 19.0), at(110.0, 19.0), at(110.0, 22.0), at(50.0, 22.0)], stroke: Some(heavy), fill: Fill::White },
+        Item::Polygon {
+            points: vec![at(5.0, 18.0), at(50.0, 18.0), at(50.0, 23.0), at(5.0, 23.0)],
+            stroke: Some(heavy),
+            fill: Fill::Hatch { angle: 45.0, spacing: 1.2 },
+        },
+        Item::Polygon {
+            points: vec![at(50.0, 19.0), at(110.0, 19.0), at(110.0, 22.0), at(50.0, 22.0)],
+            stroke: Some(heavy),
+            fill: Fill::White,
+        },
         Item::Line { from: at(5.0, 14.0), to: at(5.0, 27.0), stroke: heavy },
-        Item::Polygon { points: vec![at(110.0, 22.0), at(107.5, 26.0), at(112.5, 26.0)], stroke: Some(heavy), fill: Fill::White },
+        Item::Polygon {
+            points: vec![at(110.0, 22.0), at(107.5, 26.0), at(112.5, 26.0)],
+            stroke: Some(heavy),
+            fill: Fill::White,
+        },
         Item::Circle { centre: at(50.0, 20.5), radius: 1.0, stroke: thin, fill: Fill::White },
         Item::Arc { centre: at(5.0, 20.5), radius: 4.0, start: 120.0, sweep: 120.0, stroke: stroke(0.25, Dash::Short) },
         Item::Line { from: at(5.0, 8.0), to: at(110.0, 8.0), stroke: thin },
@@ -295,27 +325,45 @@ pub fn drawing() -> Drawing {
     for index in 0..=20 {
         let x = 5.0 + 5.25 * f64::from(index);
         items.push(Item::Line { from: at(x, 8.0), to: at(x, 17.0), stroke: thin });
-        items.push(Item::Polygon { points: vec![at(x, 18.0), at(x - 0.6, 16.0), at(x + 0.6, 16.0)], stroke: None, fill: Fill::Black });
+        items.push(Item::Polygon {
+            points: vec![at(x, 18.0), at(x - 0.6, 16.0), at(x + 0.6, 16.0)],
+            stroke: None,
+            fill: Fill::Black,
+        });
     }
-    Drawing { width: 120.0, height: 34.0, alt: "Beam A to B, fixed at A, on a roller at B, uniform load 14 kN/m".to_owned(), items }
+    Drawing {
+        width: 120.0,
+        height: 34.0,
+        alt: "Beam A to B, fixed at A, on a roller at B, uniform load 14 kN/m".to_owned(),
+        items,
+    }
 }
 
 fn words(head: &str, rows: &[(&str, &str, &str)]) -> Table {
-    let mut table = Table::new(head, head, vec![Column::text("What").wide(46.0), Column::text("Given").wide(38.0), Column::text("Source")]);
+    let mut table = Table::new(
+        head,
+        head,
+        vec![Column::text("What").wide(46.0), Column::text("Given").wide(38.0), Column::text("Source")],
+    );
     table.rows = rows.iter().map(|(a, b, c)| Row::of(vec![Cell::text(*a), Cell::text(*b), Cell::text(*c)])).collect();
     table
 }
 
 fn combinations() -> Table {
     let kn = Unit::none();
-    let mut table = Table::new("", "Factors of the cases in each combination", vec![Column::text("Combination").wide(50.0), Column::text("Purpose").wide(30.0)]);
+    let mut table = Table::new(
+        "",
+        "Factors of the cases in each combination",
+        vec![Column::text("Combination").wide(50.0), Column::text("Purpose").wide(30.0)],
+    );
     let columns = [["1.0", "1.0", "1.35", "0.9"], ["0", "1.0", "1.5", "0"], ["0", "1.0", "1.0", "1.0"]];
     for name in ["G", "Q", "S"] {
         table.columns.push(Column::figures(Cell::text(name), &kn, 13.0));
     }
     let cells: Vec<Vec<Cell>> = columns.iter().map(|column| aligned(&column.map(decimal))).collect();
     for (index, name) in ["C1 Permanent", "C2 Characteristic", "C3 Design", "C4 Uplift"].iter().enumerate() {
-        let mut row = vec![Cell::text(*name), Cell::text(["serviceability", "serviceability", "strength", "stability"][index])];
+        let mut row =
+            vec![Cell::text(*name), Cell::text(["serviceability", "serviceability", "strength", "stability"][index])];
         row.extend(cells.iter().map(|column| column[index].clone()));
         table.rows.push(Row::of(row));
     }
@@ -327,10 +375,14 @@ fn reactions() -> Table {
     for name in ["G", "Q", "S"] {
         table.columns.push(Column { align: Align::Right, ..Column::figures(Cell::text(name), &unit("kN"), 22.0) });
     }
-    let cells: Vec<Vec<Cell>> =
-        [["97.92", "64.08", "224.3"], ["1297.92", "-64.08", "10224"], ["0", "0.125", "-0.5"]].iter().map(|column| aligned(&column.map(decimal))).collect();
+    let cells: Vec<Vec<Cell>> = [["97.92", "64.08", "224.3"], ["1297.92", "-64.08", "10224"], ["0", "0.125", "-0.5"]]
+        .iter()
+        .map(|column| aligned(&column.map(decimal)))
+        .collect();
     for (index, name) in ["R_A", "R_B", "M_A"].iter().enumerate() {
-        let mut row = Row::of(std::iter::once(Cell::prose(*name)).chain(cells.iter().map(|column| column[index].clone())).collect());
+        let mut row = Row::of(
+            std::iter::once(Cell::prose(*name)).chain(cells.iter().map(|column| column[index].clone())).collect(),
+        );
         row.rule = index == 2;
         row.bold = index == 1;
         table.rows.push(row);
@@ -389,13 +441,26 @@ pub fn model() -> Model {
             ]),
             member: Some(figure("")),
             signatures: ["Prepared", "Checked", "Approved", "Seal"]
-                .map(|role| Signature { role: role.to_owned(), name: if role == "Prepared" { "A. N. Other".to_owned() } else { String::new() } })
+                .map(|role| Signature {
+                    role: role.to_owned(),
+                    name: if role == "Prepared" { "A. N. Other".to_owned() } else { String::new() },
+                })
                 .to_vec(),
         },
         given: Given {
-            limits: Some(words("", &[("total, span A–B", "span/250 = 36 mm, from the chord", "Project specification, clause 4.2")])),
+            limits: Some(words(
+                "",
+                &[("total, span A–B", "span/250 = 36 mm, from the chord", "Project specification, clause 4.2")],
+            )),
             inputs: vec![
-                words("Sections", &[("deep: E", "200 GPa", "steel table"), ("deep: I", "20 600 cm⁴", "section table"), ("light: I", "10 300 cm⁴", "section table")]),
+                words(
+                    "Sections",
+                    &[
+                        ("deep: E", "200 GPa", "steel table"),
+                        ("deep: I", "20 600 cm⁴", "section table"),
+                        ("light: I", "10 300 cm⁴", "section table"),
+                    ],
+                ),
                 words("Supports", &[("A at 0 m", "fixed", "drawing 12"), ("B at 9 m", "roller", "drawing 12")]),
             ],
             combinations: combinations(),
@@ -412,24 +477,46 @@ pub fn model() -> Model {
                 "The released support must come back to its place: f_BB R_B = v_B0 less the settlement; the rest is superposition.",
             ]),
             drawings: vec![figure("Released member")],
-            cases: Some(words("", &[("T1 force at the tip", "v = PL³/3EI, ψ = PL²/2EI", "any handbook"), ("T5 uniform load", "v = wL⁴/8EI", "any handbook")])),
+            cases: Some(words(
+                "",
+                &[
+                    ("T1 force at the tip", "v = PL³/3EI, ψ = PL²/2EI", "any handbook"),
+                    ("T5 uniform load", "v = wL⁴/8EI", "any handbook"),
+                ],
+            )),
         },
         chapters,
         sums: Sums { tables: Vec::new(), reactions: vec![reactions()] },
         diagrams: vec![figure("Combination C2")],
         checks: Checks {
-            findings: texts(&["All deflections are within their limits; the greatest utilisation is 0.81 (C2, span A–B)."]),
-            table: Some(words("", &[("C2, A–B, total", "29.2 mm of 36.0 mm, 0.81", "within"), ("C1, A–B, total", "12.1 mm of 36.0 mm, 0.34", "within")])),
+            findings: texts(&[
+                "All deflections are within their limits; the greatest utilisation is 0.81 (C2, span A–B).",
+            ]),
+            table: Some(words(
+                "",
+                &[
+                    ("C2, A–B, total", "29.2 mm of 36.0 mm, 0.81", "within"),
+                    ("C1, A–B, total", "12.1 mm of 36.0 mm, 0.34", "within"),
+                ],
+            )),
         },
         trust: Trust {
             crosschecks: vec![reactions()],
-            assumptions: texts(&["Euler–Bernoulli bending, small deflections, linear material.", "Sections are constant between the cuts."]),
+            assumptions: texts(&[
+                "Euler–Bernoulli bending, small deflections, linear material.",
+                "Sections are constant between the cuts.",
+            ]),
             cautions: texts(&["This sheet does not replace the judgement of a licensed engineer."]),
-            deference: texts(&["Local codes and licensed practice come first wherever they differ from what is shown here."]),
+            deference: texts(&[
+                "Local codes and licensed practice come first wherever they differ from what is shown here.",
+            ]),
             sources: texts(&["Cantilever cases: see the table of the method."]),
             revisions: Some(words("", &[("A", "30 November 2026", "first issue")])),
             program: texts(&["Proofspan 0.1.0, 4 significant figures carried."]),
-            hashes: Some(words("", &[("deck.toml", "SHA-256", "e3b0c44298fc1c149afbf4c8996fb924 27ae41e4649b934ca495991b7852b855")])),
+            hashes: Some(words(
+                "",
+                &[("deck.toml", "SHA-256", "e3b0c44298fc1c149afbf4c8996fb924 27ae41e4649b934ca495991b7852b855")],
+            )),
         },
         annex: Annex { file: "intake.toml".to_owned(), lines: DECK.lines().map(str::to_owned).collect() },
         drawings: vec![drawing()],
@@ -438,10 +525,7 @@ pub fn model() -> Model {
 
 pub fn options() -> Options {
     Options {
-        attachments: Attachments {
-            deck: Some(DECK.as_bytes().to_vec()),
-            results: Some(b"{\"format\": 1}\n".to_vec()),
-        },
+        attachments: Attachments { deck: Some(DECK.as_bytes().to_vec()), results: Some(b"{\"format\": 1}\n".to_vec()) },
         ident: "0123456789abcdef".to_owned(),
         ..Options::default()
     }

@@ -97,7 +97,9 @@ impl Model {
         }
         for chapter in model.chapters.iter_mut().filter(|chapter| chapter.about == "case") {
             let words = case_words(parts, chapter.index);
-            chapter.figures.push(gallery.hang(String::new(), figure::loads(member, chapter.index, &words, figure::COLUMN)));
+            chapter
+                .figures
+                .push(gallery.hang(String::new(), figure::loads(member, chapter.index, &words, figure::COLUMN)));
         }
         model.drawings = gallery.drawings;
         Ok(model)
@@ -205,10 +207,8 @@ fn trust(parts: &Parts<'_>) -> Result<Trust, Fault> {
 fn hashes(parts: &Parts<'_>) -> Result<Option<Table>, Fault> {
     use super::{Cell, Column, Row};
     let labels = parts.labels;
-    let columns = vec![
-        Column::text(labels.get("trust.file")?).wide(24.0),
-        Column::text(labels.get("trust.sha256")?).wide(96.0),
-    ];
+    let columns =
+        vec![Column::text(labels.get("trust.file")?).wide(24.0), Column::text(labels.get("trust.sha256")?).wide(96.0)];
     let mut table = Table::new("", labels.get("trust.hashes")?, columns);
     for (name, hash) in &parts.findings.hashes {
         // Groups of eight: a hash is compared by eye.

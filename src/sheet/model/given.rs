@@ -11,7 +11,12 @@ use crate::sheet::{Fault, page, typeset};
 /// What was given.
 pub fn given(parts: &Parts<'_>, gallery: &mut Gallery) -> Result<Given, Fault> {
     let (member, labels) = (parts.member, parts.labels);
-    let inputs = [sections(member, labels)?, segments(member, labels)?, supports(member, labels)?, loads(member, parts, labels)?];
+    let inputs = [
+        sections(member, labels)?,
+        segments(member, labels)?,
+        supports(member, labels)?,
+        loads(member, parts, labels)?,
+    ];
     let mut sketches = Vec::new();
     for (index, case) in member.cases.iter().enumerate() {
         let drawing = figure::loads(member, index, &case_words(parts, index), figure::COLUMN);
@@ -96,8 +101,7 @@ fn criterion(limit: &Limit, spans: &[&Span], labels: &Labels) -> Result<String, 
 
 fn sections(member: &Member, labels: &Labels) -> Result<Table, Fault> {
     let heads = [("given.section", 24.0), ("given.values", 96.0)];
-    let mut table =
-        Table::new(labels.get("given.sections")?, labels.get("given.sections")?, columns(labels, &heads)?);
+    let mut table = Table::new(labels.get("given.sections")?, labels.get("given.sections")?, columns(labels, &heads)?);
     for section in &member.sections {
         table.rows.push(Row::of(vec![Cell::text(&section.name), Cell::text(values(section, labels)?)]));
     }
@@ -136,8 +140,7 @@ fn values(section: &Section, labels: &Labels) -> Result<String, Fault> {
 
 fn segments(member: &Member, labels: &Labels) -> Result<Table, Fault> {
     let heads = [("given.segment", 24.0), ("given.length", 30.0), ("given.section", 66.0)];
-    let mut table =
-        Table::new(labels.get("given.segments")?, labels.get("given.segments")?, columns(labels, &heads)?);
+    let mut table = Table::new(labels.get("given.segments")?, labels.get("given.segments")?, columns(labels, &heads)?);
     let name = |index: usize| member.sections.get(index).map_or("", |section| section.name.as_str());
     for (index, segment) in member.segments.iter().enumerate() {
         let section = match segment.taper {
@@ -161,14 +164,17 @@ fn segments(member: &Member, labels: &Labels) -> Result<Table, Fault> {
 
 fn supports(member: &Member, labels: &Labels) -> Result<Table, Fault> {
     let heads = [("given.support", 24.0), ("given.place", 30.0), ("given.holds", 66.0)];
-    let mut table =
-        Table::new(labels.get("given.supports")?, labels.get("given.supports")?, columns(labels, &heads)?);
+    let mut table = Table::new(labels.get("given.supports")?, labels.get("given.supports")?, columns(labels, &heads)?);
     for support in &member.supports {
         let place = match member.typed_places.get(&support.at) {
             Some(typed) => typeset::typed(typed),
             None => metres(support.at.exact()),
         };
-        table.rows.push(Row::of(vec![Cell::text(&support.name), Cell::text(place), Cell::text(held(support, labels)?)]));
+        table.rows.push(Row::of(vec![
+            Cell::text(&support.name),
+            Cell::text(place),
+            Cell::text(held(support, labels)?),
+        ]));
     }
     for hinge in &member.hinges {
         let place = member.typed_places.get(&hinge.at).map_or_else(|| metres(hinge.at.exact()), typeset::typed);
@@ -239,10 +245,8 @@ fn loads(member: &Member, parts: &Parts<'_>, labels: &Labels) -> Result<Table, F
 }
 
 fn combinations(member: &Member, labels: &Labels) -> Result<Table, Fault> {
-    let mut heads = vec![
-        Column::text(labels.get("given.combination")?),
-        Column::text(labels.get("given.purpose")?).wide(26.0),
-    ];
+    let mut heads =
+        vec![Column::text(labels.get("given.combination")?), Column::text(labels.get("given.purpose")?).wide(26.0)];
     let mut cells: Vec<Vec<Cell>> = Vec::new();
     let room = (page::COLUMN - 26.0 - 30.0) / member.cases.len().max(1) as f64;
     for (index, case) in member.cases.iter().enumerate() {

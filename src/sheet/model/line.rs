@@ -64,12 +64,7 @@ pub fn symbols(step: &working::Step) -> Result<Equation, NotMathematics> {
 
 /// A step as a line; `basis` is what it rests on where the line above did not say so, `several` whether its block has
 /// other lines.
-pub fn line(
-    step: &working::Step,
-    basis: &str,
-    origins: Option<String>,
-    several: bool,
-) -> Result<Line, NotMathematics> {
+pub fn line(step: &working::Step, basis: &str, origins: Option<String>, several: bool) -> Result<Line, NotMathematics> {
     let symbols = symbols(step)?;
     let result = typeset::quantity(step.result.printed, &step.result.unit);
     let repeats = step.numbers.is_empty() || Decimal::parse(&step.numbers) == Some(step.result.printed);

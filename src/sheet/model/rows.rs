@@ -1,8 +1,8 @@
 //! Steps of one shape as the rows of a table.
 
+use super::Equation;
 use super::line::{grouped, spoken};
 use super::table::{Cell, Column, Row, Table, aligned};
-use super::Equation;
 use crate::sheet::template::Labels;
 use crate::sheet::{Fault, page, typeset};
 use crate::working;
@@ -25,7 +25,8 @@ pub fn tabulated(steps: &[&working::Step], labels: &Labels) -> Result<(String, O
     } else {
         columns.push(Column::text(labels.get("working.numbers")?));
         let numbers = steps.iter().map(|step| Equation::new(grouped(&step.numbers), spoken(&step.numbers)));
-        let cells: Result<Vec<Cell>, _> = numbers.map(|made| made.map(|equation| Cell::Equation { equation })).collect();
+        let cells: Result<Vec<Cell>, _> =
+            numbers.map(|made| made.map(|equation| Cell::Equation { equation })).collect();
         body.push(cells?);
     }
     columns.push(Column::figures(Cell::text(labels.get("working.result")?), &first.result.unit, end));

@@ -188,7 +188,9 @@ impl Reader<'_> {
         let mut words: Vec<String> = Vec::new();
         for input in steps.iter().flat_map(|step| &step.inputs) {
             let Origin::Step(index) = input.from else { continue };
-            let (Some(Some(home)), Some(step)) = (self.homes.get(index), self.working.steps.get(index)) else { continue };
+            let (Some(Some(home)), Some(step)) = (self.homes.get(index), self.working.steps.get(index)) else {
+                continue;
+            };
             let here = self.block_number(*home) == block.number;
             let same_chapter = block.number.split('.').next() == step.id.split('.').next();
             let word = format!("{}: {}", input.name, step.id);

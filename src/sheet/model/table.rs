@@ -121,7 +121,8 @@ pub fn aligned(figures: &[Decimal]) -> Vec<Cell> {
         if text.contains('·') {
             return 0.0;
         }
-        text.split_once('.').map_or(0.0, |(_, decimals)| text_width(".", Face::Regular, 1.0) + text_width(decimals, Face::Regular, 1.0))
+        text.split_once('.')
+            .map_or(0.0, |(_, decimals)| text_width(".", Face::Regular, 1.0) + text_width(decimals, Face::Regular, 1.0))
             / crate::sheet::fonts::MM_PER_PT
     };
     let longest = texts.iter().map(|text| tail(text)).fold(0.0, f64::max);
