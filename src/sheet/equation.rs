@@ -55,9 +55,22 @@ impl Equation {
         Measure::of(&parse_math(&self.source), Level::Display).total * size_pt * MM_PER_PT
     }
 
-    /// Estimated width in mm of the widest part that no line break can divide.
-    pub fn widest_part(&self, size_pt: f64) -> f64 {
-        Measure::of(&parse_math(&self.source), Level::Display).widest() * size_pt * MM_PER_PT
+    /// The equation on several lines, each narrower than `first` mm or, after the first, `rest` mm at a size in pt where
+    /// that can be done: broken before a plus or minus, else before a sign of multiplication, inside brackets only where
+    /// these alone are too wide. The words stay with the first line; the others say that they go on with it.
+    pub fn lines(&self, first: f64, rest: f64, size_pt: f64) -> Vec<Self> {
+        let em = size_pt * MM_PER_PT;
+        let mut tokens = Vec::new();
+        flatten(&parse_math(&self.source), rest / em, &mut tokens);
+        let cut = broken(&tokens, first / em, rest / em);
+        if cut.len() < 2 {
+            return vec![self.clone()];
+        }
+        let line = |(index, source): (usize, String)| Self {
+            source,
+            alt: if index == 0 { self.alt.clone() } else { format!("line {} of the same", index + 1) },
+        };
+        cut.into_iter().enumerate().map(line).collect()
     }
 
     /// Whether it holds a fraction, which makes its line tall.
@@ -116,12 +129,67 @@ impl Level {
     }
 }
 
-/// Widths in ems: of the whole, and of the parts between places where a line may break.
+/// A piece of an equation that stays whole, with its width in ems.
+struct Token {
+    text: String,
+    width: f64,
+}
+
+/// The pieces of an equation; brackets wider than `room` ems fall apart into theirs.
+fn flatten(node: &SyntaxNode, room: f64, out: &mut Vec<Token>) {
+    for child in node.children() {
+        let width = Measure::of(child, Level::Display).total;
+        let opens = matches!(child.kind(), SyntaxKind::MathDelimited | SyntaxKind::Math);
+        if opens && width > room {
+            flatten(child, room, out);
+        } else {
+            out.push(Token { text: child.full_text().to_string(), width });
+        }
+    }
+}
+
+/// Source of each line.
+fn broken(tokens: &[Token], first: f64, rest: f64) -> Vec<String> {
+    let mut lines: Vec<String> = Vec::new();
+    let mut start = 0;
+    while start < tokens.len() {
+        let room = if lines.is_empty() { first } else { rest };
+        let left = tokens.get(start..).unwrap_or_default();
+        let end = start + fitting(left, room).max(1);
+        let line: String = tokens.get(start..end).unwrap_or_default().iter().map(|token| token.text.as_str()).collect();
+        lines.push(line.trim().to_owned());
+        start = end;
+    }
+    lines.retain(|line| !line.is_empty());
+    lines
+}
+
+/// How many tokens stand on the next line.
+fn fitting(tokens: &[Token], room: f64) -> usize {
+    let (mut used, mut at_sum, mut at_product) = (0.0, 0, 0);
+    let mut behind_operand = false;
+    for (index, token) in tokens.iter().enumerate() {
+        let text = token.text.trim();
+        match text {
+            "+" | "-" if behind_operand => at_sum = index,
+            "times" | "dot" if behind_operand => at_product = index,
+            _ => {}
+        }
+        used += token.width;
+        if used > room && at_sum.max(at_product) > 0 {
+            return if at_sum > 0 { at_sum } else { at_product };
+        }
+        if !text.is_empty() {
+            behind_operand = !matches!(text, "+" | "-" | "times" | "dot" | "=" | "(" | ",");
+        }
+    }
+    tokens.len()
+}
+
+/// Width in ems.
 #[derive(Clone, Debug, Default)]
 struct Measure {
     total: f64,
-    part: f64,
-    greatest: f64,
 }
 
 impl Measure {
@@ -131,19 +199,8 @@ impl Measure {
         measure
     }
 
-    fn widest(&self) -> f64 {
-        self.greatest.max(self.part)
-    }
-
     fn solid(&mut self, width: f64) {
         self.total += width;
-        self.part += width;
-    }
-
-    fn breaks(&mut self, width: f64) {
-        self.total += width;
-        self.greatest = self.greatest.max(self.part + width);
-        self.part = 0.0;
     }
 
     fn add(&mut self, node: &SyntaxNode, level: Level) {
@@ -203,8 +260,8 @@ impl Measure {
         let scale = level.scale();
         let spaced = if level == Level::Script { 0.0 } else { 1.0 };
         match text {
-            "+" | "-" | "times" | "dot" | "minus" | "plus" => self.breaks((0.778 + 0.444 * spaced) * scale),
-            "=" | "<" | ">" | "<=" | ">=" | "approx" => self.breaks((0.778 + 0.556 * spaced) * scale),
+            "+" | "-" | "times" | "dot" | "minus" | "plus" => self.solid((0.778 + 0.444 * spaced) * scale),
+            "=" | "<" | ">" | "<=" | ">=" | "approx" => self.solid((0.778 + 0.556 * spaced) * scale),
             "," => self.solid((0.28 + 0.17 * spaced) * scale),
             "thin" => self.solid(0.17),
             "med" => self.solid(0.23),
@@ -270,12 +327,28 @@ mod tests {
     }
 
     #[test]
-    fn a_longer_equation_is_wider_and_breaks_at_its_signs() {
+    fn a_longer_equation_is_wider() {
         let Ok(short) = Equation::new("a + b", "") else { panic!() };
         let Ok(long) = Equation::new("a + b + c + d + frac(a + b + c, 2)", "") else { panic!() };
         assert!(short.width(10.0) > 5.0 && short.width(10.0) < 9.5, "{}", short.width(10.0));
         assert!(long.width(10.0) > 2.0 * short.width(10.0));
-        assert!(long.widest_part(10.0) < long.width(10.0) / 2.0);
         assert!(long.is_tall() && !short.is_tall());
+    }
+
+    #[test]
+    fn a_long_sum_breaks_before_its_signs_and_keeps_every_term() {
+        let source = "= 1.5 times 2.25 + (-3) times 4 - frac(5 times 6, 7) + 8.125 - (9 + 10.5 + 11.5 + 12.5 + 13.5 + 14.5)";
+        let Ok(equation) = Equation::new(source, "read out") else { panic!() };
+        let lines: Vec<String> = equation.lines(40.0, 35.0, 10.0).iter().map(|line| line.source().to_owned()).collect();
+        assert_eq!(lines.join(" "), source);
+        assert!(lines.len() > 2, "{lines:?}");
+        for line in lines.get(1..).unwrap_or_default() {
+            assert!(line.starts_with(['+', '-']), "{lines:?}");
+            assert!(Equation::new(line.as_str(), "").is_ok(), "{line}");
+        }
+        for line in equation.lines(40.0, 35.0, 10.0) {
+            assert!(line.width(10.0) <= 40.0, "{line:?} {}", line.width(10.0));
+        }
+        assert_eq!(equation.lines(400.0, 400.0, 10.0), vec![equation]);
     }
 }

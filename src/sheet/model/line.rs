@@ -16,10 +16,12 @@ pub struct Line {
     pub id: String,
     /// How it is set.
     pub setting: Setting,
-    /// Symbols: what it finds and from what.
-    pub symbols: Equation,
-    /// Numbers put in; none for a figure that is stated.
-    pub numbers: Option<Equation>,
+    /// Symbols, what it finds and from what, on as many lines as they need.
+    pub symbols: Vec<Equation>,
+    /// Numbers put in, on as many lines as they need; none for a figure that is stated.
+    pub numbers: Vec<Equation>,
+    /// Whether the result stands on a line of its own, since the line before it is full.
+    pub alone: bool,
     /// What it finds, in words, prose: beside a stated figure.
     pub words: String,
     /// Result with unit.
@@ -50,7 +52,7 @@ pub enum Setting {
     Row,
     /// Numbers and result below the symbols, in their own columns.
     Below,
-    /// Numbers below the symbols over the whole width, the result at the end of their last line.
+    /// Symbols, and below them numbers, over the whole width; the result at the end of the last line.
     Full,
 }
 
@@ -72,42 +74,38 @@ pub fn line(step: &working::Step, basis: &str, origins: Option<String>, several:
         true => None,
         false => Some(Equation::new(format!("= {}", grouped(&step.numbers)), spoken(&step.numbers))?),
     };
-    let alone = step.math.is_empty() || step.math == step.math_symbol;
-    let setting = match (&numbers, alone) {
-        (None, true) => Setting::Stated,
-        _ => setting(&symbols, numbers.as_ref(), &result, step.bold),
-    };
-    let wide = |equation: &Equation| equation.widest_part(page::TEXT_PT) > page::COLUMN - 2.0 * page::INDENT;
-    let shrink = wide(&symbols) || numbers.as_ref().is_some_and(wide);
-    let stated = setting == Setting::Stated;
-    let title = if stated { "" } else { step.title.as_str() };
-    let drop = match setting {
-        Setting::Row if numbers.as_ref().is_some_and(Equation::is_tall) || symbols.is_tall() => 2.6,
-        Setting::Below | Setting::Full if symbols.is_tall() => 2.6,
-        _ => 0.5,
-    };
+    let face = if step.bold { Face::Bold } else { Face::Regular };
+    let end = text_width("= ", face, page::TEXT_PT) + text_width(&result, face, page::TEXT_PT);
+    let stated = repeats && (step.math.is_empty() || step.math == step.math_symbol);
+    let setting = if stated { Setting::Stated } else { setting(&symbols, numbers.as_ref(), end) };
+    let (title, words) = if stated { ("", step.title.as_str()) } else { (step.title.as_str(), "") };
     let mut line = Line {
         id: if several { step.id.clone() } else { String::new() },
         setting,
-        symbols,
-        numbers,
-        words: if stated { step.title.clone() } else { String::new() },
+        symbols: vec![symbols],
+        numbers: numbers.into_iter().collect(),
+        alone: false,
+        words: words.to_owned(),
         result: format!("= {result}"),
         bold: step.bold,
-        shrink,
+        shrink: false,
         title: title.to_owned(),
         basis: basis.to_owned(),
         origins: origins.unwrap_or_default(),
-        drop,
+        drop: 0.0,
         room: 0.0,
     };
+    if setting == Setting::Full {
+        spread(&mut line, end);
+    }
+    let tall = |list: &[Equation]| list.first().is_some_and(Equation::is_tall);
+    let lower = tall(&line.symbols) || (setting == Setting::Row && tall(&line.numbers));
+    line.drop = if lower { 2.6 } else { 0.5 };
     line.room = room(&line);
     Ok(line)
 }
 
-fn setting(symbols: &Equation, numbers: Option<&Equation>, result: &str, bold: bool) -> Setting {
-    let face = if bold { Face::Bold } else { Face::Regular };
-    let end = text_width("= ", face, page::TEXT_PT) + text_width(result, face, page::TEXT_PT);
+fn setting(symbols: &Equation, numbers: Option<&Equation>, end: f64) -> Setting {
     let head = symbols.width(page::TEXT_PT);
     let Some(numbers) = numbers else {
         return if head + end + page::GAP <= page::COLUMN { Setting::Row } else { Setting::Full };
@@ -115,9 +113,28 @@ fn setting(symbols: &Equation, numbers: Option<&Equation>, result: &str, bold: b
     let tail = numbers.width(page::TEXT_PT) + page::GAP + end;
     match (head + page::GAP <= page::SYMBOLS, tail <= page::COLUMN - page::SYMBOLS) {
         (true, true) => Setting::Row,
-        (false, true) => Setting::Below,
-        (_, false) => Setting::Full,
+        (false, true) if head <= page::COLUMN => Setting::Below,
+        _ => Setting::Full,
     }
+}
+
+/// Breaks long equations over several lines, and says where the result goes and whether a part must be made smaller.
+fn spread(line: &mut Line, end: f64) {
+    let broken = |list: &[Equation], first: f64| -> Vec<Equation> {
+        list.iter().flat_map(|equation| equation.lines(first, page::COLUMN - 2.0 * page::INDENT, page::TEXT_PT)).collect()
+    };
+    line.symbols = broken(&line.symbols, page::COLUMN);
+    line.numbers = broken(&line.numbers, page::COLUMN - page::INDENT);
+    let lists = [&line.symbols, &line.numbers];
+    let all: Vec<(usize, f64)> = lists
+        .into_iter()
+        .enumerate()
+        .flat_map(|(row, list)| list.iter().enumerate().map(move |(index, equation)| (row + index.min(1), equation)))
+        .map(|(indents, equation)| (indents, equation.width(page::TEXT_PT)))
+        .collect();
+    let room = |indents: usize| page::COLUMN - indents as f64 * page::INDENT;
+    line.shrink = all.iter().any(|(indents, width)| *width > room(*indents));
+    line.alone = all.last().is_some_and(|(indents, width)| width + page::GAP + end > room(*indents));
 }
 
 /// Thin spaces between groups of three digits of whole parts from 10 000 up, as everywhere on the sheet.
@@ -160,11 +177,11 @@ fn room(line: &Line) -> f64 {
     let texts = [&line.title, &line.basis, &line.origins].into_iter().filter(|text| !text.is_empty());
     let notes: f64 = texts.map(|text| page::lines(text, page::NOTES, page::NOTE_PT)).sum();
     let high = |equation: &Equation| -> f64 { if equation.is_tall() { 7.5 } else { 3.2 } };
-    let numbers = line.numbers.as_ref().map_or(0.0, high);
+    let one = |list: &[Equation]| list.iter().map(|equation| high(equation) + page::EQUATION_GAP).sum::<f64>();
     let beside = match line.setting {
-        Setting::Stated | Setting::Row => high(&line.symbols).max(numbers),
-        Setting::Below | Setting::Full => high(&line.symbols) + numbers + 2.9,
-    };
+        Setting::Stated | Setting::Row => one(&line.symbols).max(one(&line.numbers)),
+        Setting::Below | Setting::Full => one(&line.symbols) + one(&line.numbers),
+    } - page::EQUATION_GAP;
     // The gap to the next line is white too.
     page::tenth((notes * page::NOTE_LINE + line.drop - beside - page::LINE_GAP + 2.0).max(0.0))
 }
