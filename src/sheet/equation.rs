@@ -337,7 +337,8 @@ mod tests {
 
     #[test]
     fn a_long_sum_breaks_before_its_signs_and_keeps_every_term() {
-        let source = "= 1.5 times 2.25 + (-3) times 4 - frac(5 times 6, 7) + 8.125 - (9 + 10.5 + 11.5 + 12.5 + 13.5 + 14.5)";
+        let source =
+            "= 1.5 times 2.25 + (-3) times 4 - frac(5 times 6, 7) + 8.125 - (9 + 10.5 + 11.5 + 12.5 + 13.5 + 14.5)";
         let Ok(equation) = Equation::new(source, "read out") else { panic!() };
         let lines: Vec<String> = equation.lines(40.0, 35.0, 10.0).iter().map(|line| line.source().to_owned()).collect();
         assert_eq!(lines.join(" "), source);

@@ -121,7 +121,9 @@ fn setting(symbols: &Equation, numbers: Option<&Equation>, end: f64) -> Setting 
 /// Breaks long equations over several lines, and says where the result goes and whether a part must be made smaller.
 fn spread(line: &mut Line, end: f64) {
     let broken = |list: &[Equation], first: f64| -> Vec<Equation> {
-        list.iter().flat_map(|equation| equation.lines(first, page::COLUMN - 2.0 * page::INDENT, page::TEXT_PT)).collect()
+        list.iter()
+            .flat_map(|equation| equation.lines(first, page::COLUMN - 2.0 * page::INDENT, page::TEXT_PT))
+            .collect()
     };
     line.symbols = broken(&line.symbols, page::COLUMN);
     line.numbers = broken(&line.numbers, page::COLUMN - page::INDENT);
