@@ -2,11 +2,18 @@
 //!
 //! The modules stand in the order of the flow; each may use what stands to its left and nothing to its right.
 
-pub mod analysis;
-pub mod diagnostic;
-pub mod figure;
-pub mod member;
 pub mod number;
 pub mod quantity;
-pub mod sheet;
+pub mod diagnostic;
+pub mod deck;
+pub mod member;
+pub mod analysis;
+pub mod crosscheck;
+pub mod verdict;
 pub mod working;
+pub mod results;
+pub mod calculation;
+pub mod figure;
+pub mod sheet;
+pub mod issue;
+pub mod cli;

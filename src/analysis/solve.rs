@@ -257,6 +257,18 @@ impl Flexibility {
         self.lower.is_empty()
     }
 
+    /// The greatest difference of f_ij and f_ji, relative to the root of f_ii f_jj.
+    pub fn asymmetry(&self) -> f64 {
+        let mut greatest = 0.0_f64;
+        for i in 0..self.len() {
+            for j in self.lower.first(i).min(self.upper.first(i))..i {
+                let scale = (self.lower.get(i, i) * self.lower.get(j, j)).sqrt();
+                greatest = greatest.max((self.lower.get(i, j) - self.upper.get(i, j)).abs() / scale);
+            }
+        }
+        greatest
+    }
+
     /// Reduced right-hand sides and redundants: a quotient for one, Cramer's rule for two, elimination for more.
     fn solve(&self, gaps: &[f64]) -> (Vec<f64>, Vec<f64>) {
         let f = |i, j| self.lower.get(i, j);

@@ -118,9 +118,21 @@ pub fn used(member: &Member) -> Vec<usize> {
     used
 }
 
-/// Draws the member's outline about the axis y = 0. Neighbouring segments that look alike are drawn as one.
+/// Sections in use, the stiffest first.
+fn by_rigidity(member: &Member) -> Vec<usize> {
+    let rigidity = |index: usize| {
+        let section = member.sections.get(index);
+        section.map_or(0.0, |section| section.modulus.value.si() * section.second_moment.value.si())
+    };
+    let mut order = used(member);
+    order.sort_by(|a, b| rigidity(*b).total_cmp(&rigidity(*a)));
+    order
+}
+
+/// Draws the member's outline about the axis y = 0. Neighbouring segments that look alike are drawn as one; hatching, the
+/// stiffest section first, tells sections apart.
 pub fn draw(canvas: &mut Canvas, member: &Member, scale: Scale, depths: &Depths, hatched: bool) {
-    let used = used(member);
+    let used = by_rigidity(member);
     let mut index = 0;
     while let Some(segment) = member.segments.get(index) {
         let mut last = index;

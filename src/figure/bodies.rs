@@ -81,7 +81,9 @@ fn label(letter: &str, name: &str) -> Vec<Run> {
 fn rows(pieces: &[Piece], width: f64, apart: f64) -> Vec<(Vec<&Piece>, f64)> {
     let room = width - 2.0 * LEFT;
     let each = SHORTEST + apart;
-    let most = ((room + apart) / each).floor().max(1.0) as usize;
+    // A single row needs no room for half gaps at its ends.
+    let single = pieces.len() as f64 * each - apart <= room;
+    let most = if single { pieces.len().max(1) } else { (room / each).floor().max(1.0) as usize };
     let count = pieces.len().div_ceil(most).max(1);
     let share = pieces.len().div_ceil(count).max(1);
     pieces

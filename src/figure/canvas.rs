@@ -15,7 +15,7 @@ pub const HAIR: f64 = 0.12;
 pub const LABEL: f64 = 7.5;
 /// Distance of baselines of stacked labels, mm.
 pub const ROW: f64 = 3.4;
-/// Paper left around a drawing, mm.
+/// Paper left above and below a drawing, mm.
 const MARGIN: f64 = 0.6;
 
 /// A solid stroke.
@@ -144,14 +144,14 @@ impl Canvas {
         self.items.iter().map(Extent::of).reduce(Extent::with)
     }
 
-    /// Crops to what is drawn, moves it to the origin, rounds. The drawing is `width` wide, or wider where need be; what
-    /// stands at x = 0 stands `MARGIN` from its left edge unless something reaches further left.
+    /// Crops the height to what is drawn, moves it to the origin, rounds. The drawing is `width` wide, or wider where
+    /// something reaches beyond either side.
     pub fn finish(self, width: f64, alt: String) -> Drawing {
         let extent = self.extent().unwrap_or(Extent { left: 0.0, top: 0.0, right: 0.0, bottom: 0.0 });
-        let (dx, dy) = ((MARGIN - extent.left).max(0.0), MARGIN - extent.top);
+        let (dx, dy) = ((-extent.left).max(0.0), MARGIN - extent.top);
         let items = self.items.into_iter().map(|item| shifted(item, dx, dy)).collect();
         Drawing {
-            width: thousandth(width.max(extent.right + dx + MARGIN)),
+            width: thousandth(width.max(extent.right + dx)),
             height: thousandth(extent.bottom + dy + MARGIN),
             alt,
             items,

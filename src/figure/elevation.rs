@@ -35,7 +35,7 @@ pub fn elevation(member: &Member, said: &Words, width: f64) -> Drawing {
     let (top, low) = extent.map_or((0.0, 0.0), |extent| (extent.top, extent.bottom));
     let above = segment_notes(member, said, scale, &depths);
     annotate(&mut canvas, &above, Layer { edge: top - 0.5, up: true, left: 0.0, right: width, beside: false });
-    let below = name_notes(member, said, scale, &depths, |_| String::new());
+    let below = name_notes(member, said, scale, &depths);
     let low =
         annotate(&mut canvas, &below, Layer { edge: low + 0.2, up: false, left: 0.0, right: width, beside: false });
     let low = dimensions(&mut canvas, member, scale, low, width);
@@ -56,8 +56,8 @@ fn scale_note(factor: Option<f64>) -> String {
     match factor {
         None => "Lengths to scale, depths not to scale.".to_owned(),
         Some(1.0) => "Lengths and depths to one scale.".to_owned(),
-        Some(factor) if factor > 1.0 => format!("Lengths to scale, depths {factor:.0} times as large."),
-        Some(factor) => format!("Lengths to scale, depths 1/{:.0} as large.", 1.0 / factor),
+        Some(factor) if factor > 1.0 => format!("Lengths to scale, depths at {factor:.0} times that scale."),
+        Some(factor) => format!("Lengths to scale, depths at 1/{:.0} of that scale.", 1.0 / factor),
     }
 }
 
@@ -108,19 +108,13 @@ fn segment_notes(member: &Member, said: &Words, scale: Scale, depths: &Depths) -
     notes
 }
 
-/// Names of supports, with their stiffnesses and whatever `more` adds, and names of cuts between them.
-pub fn name_notes(
-    member: &Member,
-    said: &Words,
-    scale: Scale,
-    depths: &Depths,
-    more: impl Fn(usize) -> String,
-) -> Vec<Note> {
-    let one = |(index, support): (usize, &Support)| {
-        let text = format!("{}{}{}", support.name, springs(support, member), more(index));
+/// Names of supports, with their stiffnesses, and names of cuts between them; supports first, in their order.
+pub fn name_notes(member: &Member, said: &Words, scale: Scale, depths: &Depths) -> Vec<Note> {
+    let one = |support: &Support| {
+        let text = format!("{}{}", support.name, springs(support, member));
         Note::new(scale.x(support.at.x()), vec![plain(text)])
     };
-    let mut notes: Vec<Note> = member.supports.iter().enumerate().map(one).collect();
+    let mut notes: Vec<Note> = member.supports.iter().map(one).collect();
     for cut in &said.cuts {
         let taken = member.supports.iter().any(|support| (support.at.x() - cut.at).abs() < 1e-9);
         if !taken {

@@ -48,3 +48,19 @@ fn crossings(turned: &[(f64, f64)], across: f64) -> Vec<f64> {
     places.sort_by(f64::total_cmp);
     places
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn hatch_lines_stay_inside_and_keep_their_distance() {
+        let square = [at(0.0, 0.0), at(10.0, 0.0), at(10.0, 4.0), at(0.0, 4.0)];
+        let lines = hatch_lines(&square, 0.0, 1.0);
+        assert_eq!(lines.first(), Some(&(at(0.0, 0.0), at(10.0, 0.0))));
+        assert_eq!(lines.len(), 4);
+        let inside = |p: &Point| (-0.001..=10.001).contains(&p.x) && (-0.001..=4.001).contains(&p.y);
+        assert!(hatch_lines(&square, 37.0, 0.7).iter().all(|(a, b)| inside(a) && inside(b)));
+        assert!(hatch_lines(&square, 45.0, 0.0).is_empty());
+    }
+}

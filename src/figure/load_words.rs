@@ -4,8 +4,8 @@ use super::Words;
 use super::label::{self, Measure};
 use crate::member::{LoadKind, Member, Place, Stretch};
 
-/// `: settles 6 mm; turns 2 mrad clockwise` for what moves a support; empty where nothing does.
-pub fn movements(member: &Member, kinds: &[&LoadKind], support: usize) -> String {
+/// `settles 6 mm`, `turns 2 mrad clockwise` for everything that moves a support.
+pub fn movements(member: &Member, kinds: &[&LoadKind], support: usize) -> Vec<String> {
     let system = member.title.system;
     let mut said = Vec::new();
     for kind in kinds {
@@ -22,7 +22,7 @@ pub fn movements(member: &Member, kinds: &[&LoadKind], support: usize) -> String
             _ => {}
         }
     }
-    if said.is_empty() { String::new() } else { format!(": {}", said.join("; ")) }
+    said
 }
 
 fn clockwise(value: f64) -> &'static str {
@@ -69,7 +69,7 @@ pub fn describe(member: &Member, kind: &LoadKind, said: &Words) -> String {
             format!("couple {} {} at {}", figure(&m.typed, si, Measure::Couple), clockwise(si), place(*at))
         }
         LoadKind::Settlement { support, .. } | LoadKind::Rotation { support, .. } => {
-            format!("support {}{}", name(support), movements(member, &[kind], *support).replacen(':', "", 1))
+            format!("support {} {}", name(support), movements(member, &[kind], *support).join(" "))
         }
         LoadKind::Gradient { difference, over: part } => {
             let si = difference.value.si();

@@ -55,6 +55,9 @@ fn point_label(member: &Member, kind: &LoadKind) -> String {
     }
 }
 
+/// Labels below the member are not joined beyond this width, mm.
+const LONGEST: f64 = 70.0;
+
 struct Sketch<'a> {
     member: &'a Member,
     said: &'a Words,
@@ -138,14 +141,14 @@ impl Sketch<'_> {
         let mut notes: Vec<Note> = away;
         let mut tail = base;
         for (place, _) in self.points() {
-            let stands = self.stands(placed, self.x(place), base);
+            let stands = self.stands(placed, place);
             tail = tail.min(stands - SHAFT);
         }
         // Above every strip that a label could meet.
         tail = tail.min(highest - 3.4);
         for (place, kind) in self.points() {
             let x = self.x(place);
-            let stands = self.stands(placed, x, base);
+            let stands = self.stands(placed, place);
             let (top, tip) = (at(x, tail), at(x, stands));
             let down = matches!(kind, LoadKind::Point { p, .. } if p.value.si() >= 0.0);
             let (from, to) = if down { (top, tip) } else { (tip, top) };
@@ -155,9 +158,9 @@ impl Sketch<'_> {
         annotate(canvas, &notes, Layer { edge: tail, up: true, left: 0.0, right: self.width, beside: true });
     }
 
-    /// y of what a force at x stands on: the highest strip there, else the member.
-    fn stands(&self, placed: &[Placed], x: f64, base: f64) -> f64 {
-        let member = (-self.depths.greatest(self.member) - 0.3).max(base);
+    /// y of what a force stands on: the highest strip there, else the member.
+    fn stands(&self, placed: &[Placed], place: Place) -> f64 {
+        let (x, member) = (self.x(place), -self.depths.half_at(self.member, place.x()) - 0.3);
         placed.iter().filter_map(|strip| strip.line(x)).fold(member, |top, line| top.min(line - 0.15))
     }
 
@@ -221,25 +224,18 @@ impl Sketch<'_> {
     /// Names, movements, couples' figures; returns the lowest y.
     fn below(&self, canvas: &mut Canvas, low: f64) -> f64 {
         let system = self.member.title.system;
-        let mut notes = name_notes(self.member, self.said, self.scale, &self.depths, |support| {
-            movements(self.member, &self.kinds, support)
-        });
+        let mut notes = name_notes(self.member, self.said, self.scale, &self.depths);
         let named = notes.len();
+        for (index, support) in self.member.supports.iter().enumerate() {
+            for text in movements(self.member, &self.kinds, index) {
+                add(&mut notes, named, self.x(support.at), None, text);
+            }
+        }
         for kind in &self.kinds {
             if let LoadKind::Couple { m, at: place } = kind {
                 let text = label::given(&m.typed, m.value.si(), Measure::Couple, system, true);
-                let x = self.x(*place);
-                // A couple at a named place shares the name's label.
-                match notes.iter_mut().take(named).find(|note| (note.x - x).abs() < 0.05) {
-                    Some(note) => {
-                        let joint = if note.runs.len() > 1 { "," } else { ":" };
-                        note.runs.push(plain(format!("{joint} {text}")));
-                    }
-                    None => {
-                        let start = Some(self.depths.half_at(self.member, place.x()) + 0.2);
-                        notes.push(Note { x, start, runs: vec![plain(text)] });
-                    }
-                }
+                let start = self.depths.half_at(self.member, place.x()) + 0.2;
+                add(&mut notes, named, self.x(*place), Some(start), text);
             }
         }
         let edge = low.max(COUPLE) + 0.3;
@@ -264,6 +260,21 @@ impl Sketch<'_> {
         places.dedup();
         chain_of(canvas, &places, between(&places, self.member), self.scale, low + 2.4, self.width);
     }
+}
+
+/// Adds a figure to the label of the name at its place, or, where there is none or the label grows long, as its own.
+fn add(notes: &mut Vec<Note>, named: usize, x: f64, start: Option<f64>, text: String) {
+    if let Some(note) = notes.iter_mut().take(named).find(|note| (note.x - x).abs() < 0.05) {
+        let joint = if note.runs.len() > 1 { "," } else { ":" };
+        let more = plain(format!("{joint} {text}"));
+        if note.width() + measure::width(std::slice::from_ref(&more), LABEL) <= LONGEST {
+            note.runs.push(more);
+            return;
+        }
+        notes.push(Note::new(x, vec![plain(text)]));
+        return;
+    }
+    notes.push(Note { x, start, runs: vec![plain(text)] });
 }
 
 /// One label at each end, or one for both where the strip is short.

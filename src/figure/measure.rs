@@ -63,8 +63,9 @@ mod tests {
     #[test]
     fn a_subscript_is_narrower_and_reaches_lower() {
         let sub = Run { sub: true, ..plain("B") };
-        assert!(width(&[sub.clone()], 8.0) < width(&[plain("B")], 8.0));
-        assert!(heights(&[sub], 8.0).1 > heights(&[plain("B")], 8.0).1);
+        let (lowered, upright) = ([sub], [plain("B")]);
+        assert!(width(&lowered, 8.0) < width(&upright, 8.0));
+        assert!(heights(&lowered, 8.0).1 > heights(&upright, 8.0).1);
     }
 
     #[test]

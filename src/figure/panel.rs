@@ -4,7 +4,7 @@ use super::canvas::{Canvas, Extent, HAIR, LABEL, NORMAL, dashed, plain, solid, s
 use super::measure;
 use super::place::Field;
 use super::plot::{Curve, KEY, Panel, Plot};
-use super::primitive::{Anchor, Dash, Fill, Item, Point, Run, at};
+use super::primitive::{Anchor, Dash, Fill, Point, Run, at};
 use super::rows::{Layer, Note, annotate, spread};
 
 /// Height of a panel's values, mm.
@@ -52,6 +52,8 @@ impl Rise {
 /// Something to name: a point on paper and a label.
 struct Named {
     point: Point,
+    /// Where the label stands first, degrees clockwise from x.
+    towards: f64,
     runs: Vec<Run>,
 }
 
@@ -72,7 +74,8 @@ pub fn panel(canvas: &mut Canvas, panel: &Panel, plot: &Plot, frame: Frame, top:
         for mark in curve.marks.iter().filter(|mark| mark.x.is_finite() && mark.y.is_finite()) {
             let point = at(frame.x(mark.x), rise.y(mark.y));
             own.circle(point, 0.42, solid(HAIR), Fill::Black);
-            named.push(Named { point, runs: vec![plain(mark.label.clone())] });
+            let towards = if point.y <= rise.axis { -90.0 } else { 90.0 };
+            named.push(Named { point, towards, runs: vec![plain(mark.label.clone())] });
         }
     }
     name_lines(&mut own, panel, frame, rise);
@@ -124,7 +127,8 @@ fn chords(canvas: &mut Canvas, panel: &Panel, frame: Frame, rise: Rise) -> Vec<N
                 canvas.head(to, (0.0, down), 1.4);
                 canvas.head(from, (0.0, -down), 1.4);
             }
-            named.push(Named { point: at(from.x, (from.y + to.y) / 2.0), runs: vec![plain(label.clone())] });
+            let middle = at(from.x, (from.y + to.y) / 2.0);
+            named.push(Named { point: middle, towards: 0.0, runs: vec![plain(label.clone())] });
         }
     }
     named
@@ -166,7 +170,7 @@ fn name_points(canvas: &mut Canvas, mut named: Vec<Named>, frame: Frame, rise: R
     let mut field = Field::new(bounds);
     canvas.items.iter().for_each(|item| field.add(item));
     let upwards = |point: Point| point.y <= rise.axis;
-    if named.iter().all(|name| field.place(canvas, name.point, upwards(name.point), &name.runs)) {
+    if named.iter().all(|name| field.place(canvas, name.point, name.towards, &name.runs)) {
         return;
     }
     canvas.items.truncate(before);
@@ -176,22 +180,21 @@ fn name_points(canvas: &mut Canvas, mut named: Vec<Named>, frame: Frame, rise: R
             .filter(|name| upwards(name.point) == up)
             .map(|name| Note { x: name.point.x, start: Some(name.point.y), runs: name.runs.clone() })
             .collect();
-        let edge = if up { highest - 3.6 } else { lowest + 1.0 };
-        let layer = Layer { edge, up, left: 0.0, right: frame.right + 2.0, beside: true };
+        let edge = if up { highest - 3.0 } else { lowest + 0.6 };
+        // Short of the leaders to the names of lines.
+        let layer = Layer { edge, up, left: 0.0, right: frame.right + 0.2, beside: true };
         keep_clear(canvas, layer, &notes);
     }
 }
 
-/// Places a layer clear of the names of lines, which may reach above or below the values.
+/// Places a layer clear of leaders to the names of lines that end early, which may reach above or below the values.
 fn keep_clear(canvas: &mut Canvas, layer: Layer, notes: &[Note]) {
-    let texts = canvas.items.iter().filter(|item| matches!(item, Item::Text { .. }));
-    let others: Vec<Extent> = texts.map(Extent::of).filter(|extent| extent.left < layer.right + 1.0).collect();
-    let edge =
-        others.iter().fold(
-            layer.edge,
-            |edge, other| {
-                if layer.up { edge.min(other.top - 3.0) } else { edge.max(other.bottom + 1.0) }
-            },
-        );
+    let others = canvas.items.iter().map(Extent::of).filter(|extent| extent.left < layer.right + 0.2);
+    let edge = others.fold(
+        layer.edge,
+        |edge, other| {
+            if layer.up { edge.min(other.top - 2.6) } else { edge.max(other.bottom + 0.4) }
+        },
+    );
     annotate(canvas, notes, Layer { edge, ..layer });
 }

@@ -70,14 +70,15 @@ impl Field {
         !range.filter_map(|column| self.columns.get(column)).flatten().any(hit)
     }
 
-    /// Places a label about a point, upwards first where `up`; false, and nothing drawn, where it finds no room.
-    pub fn place(&mut self, canvas: &mut Canvas, point: Point, up: bool, runs: &[Run]) -> bool {
+    /// Places a label about a point, first in the direction `towards` (degrees clockwise from x); false, and nothing
+    /// drawn, where it finds no room.
+    pub fn place(&mut self, canvas: &mut Canvas, point: Point, towards: f64, runs: &[Run]) -> bool {
         let width = measure::width(runs, LABEL);
         let (above, below) = measure::heights(runs, LABEL);
         let height = above + below;
         for ring in RINGS {
             for turn in TURNS {
-                let degrees = if up { turn - 90.0 } else { turn + 90.0 }.to_radians();
+                let degrees = (towards + turn).to_radians();
                 let (ux, uy) = (libm::cos(degrees), libm::sin(degrees));
                 let reach = |u: f64, side: f64| u * ring + u.signum() * side / 2.0 * (u.abs() * 1.6).min(1.0);
                 let centre = at(point.x + reach(ux, width), point.y + reach(uy, height));

@@ -126,14 +126,15 @@ pub fn diagrams(plot: &Plot, width: f64) -> Drawing {
     }
     let names: Vec<Note> =
         plot.supports.iter().map(|(x, name)| Note::new(frame.x(*x), vec![plain(name.clone())])).collect();
-    let edge = low - 3.0;
+    // One axis for all panels.
+    let axis = low - 1.4;
     for note in &names {
-        canvas.line(at(note.x, edge - 1.2), at(note.x, edge), solid(HAIR));
+        canvas.line(at(note.x, axis - 0.9), at(note.x, axis + 0.9), solid(HAIR));
     }
-    let layer = Layer { edge, up: false, left: 0.0, right: width, beside: false };
+    canvas.arrow(at(frame.left, axis), at(frame.right + 3.4, axis), HAIR, 1.6);
+    canvas.text(at(frame.right + 4.4, axis + 0.6), Anchor::Start, vec![symbol("x")]);
+    let layer = Layer { edge: axis + 1.0, up: false, left: 0.0, right: width, beside: false };
     annotate(&mut canvas, &names, layer);
-    canvas.text(at(frame.right + 1.5, edge), Anchor::Start, vec![symbol("x")]);
-    canvas.arrow(at(frame.right - 6.0, edge - 0.8), at(frame.right + 0.6, edge - 0.8), HAIR, 1.4);
     canvas.finish(width, alt(plot))
 }
 

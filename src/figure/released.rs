@@ -50,7 +50,7 @@ pub fn released(member: &Member, redundants: &[Redundant], said: &Words, width: 
     let upper = Layer { edge: top, up: true, left: 0.0, right: width, beside: false };
     annotate(&mut canvas, &moments, upper);
     // Names stay near the member; the forces' symbols stand at the tails of their arrows.
-    let mut below = name_notes(member, said, scale, &depths, |_| String::new());
+    let mut below = name_notes(member, said, scale, &depths);
     for note in notes(member, redundants, scale, |redundant| matches!(redundant, Redundant::Force(_))) {
         match below.iter_mut().find(|name| (name.x - note.x).abs() < 0.01) {
             Some(name) => {

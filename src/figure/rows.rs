@@ -21,7 +21,8 @@ impl Note {
         Self { x, start: None, runs }
     }
 
-    fn width(&self) -> f64 {
+    /// Width of the label, mm.
+    pub fn width(&self) -> f64 {
         measure::width(&self.runs, LABEL)
     }
 }
@@ -42,17 +43,19 @@ pub struct Layer {
 }
 
 /// Clear paper between labels of one row, mm.
-const GAP: f64 = 1.1;
+const GAP: f64 = 1.8;
 /// Clear paper between a pole and its label, mm.
 const BESIDE: f64 = 0.9;
 /// Least distance of poles, mm.
 const POLES: f64 = 1.3;
 /// Least distance of upright labels, mm.
 const UPRIGHT: f64 = 3.0;
+/// Distance of an upright label and a pole beside it, mm.
+const BETWEEN: f64 = 1.8;
 /// Height of the zone in which poles fan out, mm.
 const FAN: f64 = 2.2;
 /// How much higher rows may grow than upright labels, which are harder to read.
-const PATIENCE: f64 = 1.5;
+const PATIENCE: f64 = 1.2;
 
 /// Places all notes; returns the far edge of the layer. Nothing is left out, whatever the number of notes.
 pub fn annotate(canvas: &mut Canvas, notes: &[Note], layer: Layer) -> f64 {
@@ -74,7 +77,7 @@ pub fn annotate(canvas: &mut Canvas, notes: &[Note], layer: Layer) -> f64 {
     let longest = notes.iter().map(Note::width).fold(0.0, f64::max);
     let places = if rows as f64 * ROW > PATIENCE * longest { upright(&notes, layer) } else { None };
     match places {
-        Some(places) => stand(canvas, &notes, &places, layer),
+        Some((places, tiers)) => stand(canvas, &notes, (&places, tiers), layer),
         None => raise(canvas, &notes, &flags, layer),
     }
 }
@@ -222,31 +225,38 @@ fn raise(canvas: &mut Canvas, notes: &[Note], flags: &[Flag], layer: Layer) -> f
     far
 }
 
-fn upright(notes: &[Note], layer: Layer) -> Option<Vec<f64>> {
+/// Places of upright labels and the number of their tiers: one, or two with the poles of the far tier between the labels
+/// of the near one.
+fn upright(notes: &[Note], layer: Layer) -> Option<(Vec<f64>, usize)> {
     let wish: Vec<f64> = notes.iter().map(|note| note.x).collect();
-    let apart = vec![UPRIGHT; notes.len().saturating_sub(1)];
     let low = vec![layer.left + UPRIGHT / 2.0; notes.len()];
     let high = vec![layer.right - UPRIGHT / 2.0; notes.len()];
-    spread(&wish, &apart, &low, &high)
+    [(UPRIGHT, 1), (BETWEEN, 2)].into_iter().find_map(|(pitch, tiers)| {
+        let apart = vec![pitch; notes.len().saturating_sub(1)];
+        Some((spread(&wish, &apart, &low, &high)?, tiers))
+    })
 }
 
-fn stand(canvas: &mut Canvas, notes: &[Note], places: &[f64], layer: Layer) -> f64 {
+fn stand(canvas: &mut Canvas, notes: &[Note], (places, tiers): (&[f64], usize), layer: Layer) -> f64 {
     let fan = notes.iter().zip(places).any(|(note, place)| (note.x - place).abs() > 0.05);
     let away = if layer.up { -1.0 } else { 1.0 };
     let knee = layer.edge + away * if fan { FAN } else { 0.3 };
     let (above, below) = tallest(notes);
-    let mut longest = 0.0_f64;
-    for (note, place) in notes.iter().zip(places) {
+    let longest = notes.iter().map(Note::width).fold(0.0, f64::max) + 1.0;
+    for (index, (note, place)) in notes.iter().zip(places).enumerate() {
+        let foot = knee + away * longest * (index % tiers) as f64;
         let mut points: Vec<_> = note.start.iter().map(|start| at(note.x, *start)).collect();
-        if fan || note.start.is_some() || layer.beside {
+        if fan || tiers > 1 || note.start.is_some() || layer.beside {
             points.extend([at(note.x, layer.edge), at(*place, knee)]);
+        }
+        if tiers > 1 {
+            points.push(at(*place, foot));
         }
         canvas.polyline(points, solid(HAIR));
         let anchor = if layer.up { Anchor::Start } else { Anchor::End };
-        canvas.turned(at(place + (above - below) / 2.0, knee + away * 0.5), anchor, note.runs.clone());
-        longest = longest.max(note.width());
+        canvas.turned(at(place + (above - below) / 2.0, foot + away * 0.5), anchor, note.runs.clone());
     }
-    knee + away * (0.5 + longest)
+    knee + away * longest * tiers as f64
 }
 
 fn tallest(notes: &[Note]) -> (f64, f64) {

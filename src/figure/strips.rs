@@ -145,7 +145,7 @@ impl Taken {
         let overlap = |a: (f64, f64), b: (f64, f64), gap: f64| a.0 < b.1 + gap && b.0 < a.1 + gap;
         let clash = |labels: &[(f64, f64)], others: &Self| {
             labels.iter().any(|label| {
-                overlap(*label, others.strip, 0.5) || others.labels.iter().any(|theirs| overlap(*label, *theirs, 0.9))
+                overlap(*label, others.strip, 0.8) || others.labels.iter().any(|theirs| overlap(*label, *theirs, 0.9))
             })
         };
         overlap(self.strip, other.strip, -0.05) || clash(&self.labels, other) || clash(&other.labels, self)
@@ -164,7 +164,7 @@ fn spots(strip: &Strip, poles: &mut Vec<f64>, right: f64) -> Vec<Spot> {
         let wishes = (0..=steps).flat_map(|step| [f64::from(step) * 0.5, f64::from(step) * -0.5]);
         let spot = wishes.map(|shift| middle + shift).find(|x| {
             let (low, high) = (x - half, x + half);
-            low >= 0.0 && high <= right && poles.iter().all(|pole| *pole < low - 0.6 || *pole > high + 0.6)
+            low >= 0.0 && high <= right && poles.iter().all(|pole| *pole < low - 1.0 || *pole > high + 1.0)
         });
         match spot {
             Some(x) => spots.push(Spot::Over(x)),

@@ -193,13 +193,13 @@ impl Symbol {
 
     /// A spiral about the node, its outer end held by the ground at `base`.
     fn coil(self, canvas: &mut Canvas, base: f64) -> f64 {
-        let outer = (self.size * 0.55).max(self.half + self.size * 0.2);
+        let outer = (self.size * 0.55).max(self.half + self.size * 0.2).min(3.2);
         let turns = 1.75;
         let spiral = (0..=42).map(|index| {
             let part = f64::from(index) / 42.0;
             let radius = outer * (0.2 + 0.8 * part);
             // It ends at the left of the node, heading down.
-            super::primitive::on_circle(self.node, radius, 180.0 + (part - 1.0) * turns * 360.0 * -1.0)
+            super::primitive::on_circle(self.node, radius, 180.0 + (1.0 - part) * turns * 360.0)
         });
         canvas.polyline(spiral.collect(), solid(NORMAL * 0.8));
         let ground = base - 0.9;

@@ -4,6 +4,7 @@
 //! apart or found equal without a tolerance. Spans, pieces and names have been resolved to indices; every index kept
 //! here is within its list, and lists of supports, hinges and segments are ordered from left to right.
 
+pub mod build;
 mod load;
 mod place;
 

@@ -77,6 +77,18 @@ impl Decimal {
         if short.exponent >= 0 { mantissa * ten(short.exponent) } else { mantissa / ten(-short.exponent) }
     }
 
+    /// The decimal of `digits` significant figures nearest to `value`; zero for what is not finite or beyond 10^30.
+    pub fn nearest(value: f64, digits: u32) -> Self {
+        if value == 0.0 || !value.is_finite() || value.abs() > 1e30 || value.abs() < 1e-30 {
+            return Self::ZERO;
+        }
+        let lead = libm::floor(libm::log10(value.abs())) as i32;
+        let places = digits as i32 - 1 - lead;
+        let scaled = if places >= 0 { value * ten(places) } else { value / ten(-places) };
+        let rounded = Self::new(libm::round(scaled) as i128, -places);
+        if places < 0 { rounded.with_exponent(0).unwrap_or(rounded) } else { rounded }
+    }
+
     /// The same value without trailing zeros.
     pub fn trimmed(self) -> Self {
         if self.mantissa == 0 {

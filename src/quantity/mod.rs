@@ -2,9 +2,11 @@
 //! they are typed and printed in.
 
 mod decimal;
+mod parse;
 mod unit;
 
 pub use decimal::Decimal;
+pub use parse::{QuantityFault, parse_quantity, parse_unit};
 pub use unit::{Atom, Dimension, KNOWN, PCI, Unit};
 
 /// Standard gravity as weight per mass, N/kg (9.80665 m/s², ISO 80000-3).

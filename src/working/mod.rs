@@ -13,5 +13,5 @@ mod trace;
 mod units;
 
 pub use draft::Mismatch;
-pub use narrate::{Demand, narrate};
+pub use narrate::{Demand, narrate, place_names};
 pub use step::{Block, Body, Chapter, Chapters, Figure, Input, Origin, Step, Working};

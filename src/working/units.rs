@@ -128,8 +128,8 @@ impl Base {
 
 /// The unit that turns a figure in `from` into one in `to`: `to / from`.
 pub fn conversion(from: &Unit, to: &Unit) -> Unit {
-    let inverse = from.factors().iter().map(|(atom, power)| (*atom, -power));
-    Unit::of(to.factors().iter().copied().chain(inverse))
+    let inverse = Unit::of(from.factors().iter().map(|(atom, power)| (*atom, -power)));
+    product(to, &inverse)
 }
 
 /// Product of units, like factors joined.

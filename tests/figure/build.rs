@@ -174,3 +174,39 @@ pub fn crowded() -> Member {
     member.cases = vec![case("Q", loads)];
     member
 }
+
+/// Three spans and an overhang on a spring, as a pump house might have.
+pub fn three_spans() -> Member {
+    let sections = vec![section("deep", "23130", Some("400")), section("light", "8356", Some("300"))];
+    let supports =
+        vec![support("A", "0", 'P'), support("B", "4.5", 'R'), support("C", "9.6", 'e'), support("D", "14", 'R')];
+    let segments = [("3.6", 1, None), ("2.1", 0, None), ("3.9", 1, None), ("6.2", 1, None)];
+    let mut member = member(sections, &segments, supports, &[("H", "7")]);
+    member.cases = vec![
+        case("G", vec![LoadKind::SelfWeight, uniform("8.4", "0", "15.8"), point("12.5", "15.8")]),
+        case(
+            "Q",
+            vec![
+                uniform("12", "0", "4.5"),
+                linear("0", "15", "4.5", "9.6"),
+                point("30", "11.2"),
+                point("30", "12.4"),
+                point("18.5", "12.6"),
+                couple("9", "2"),
+            ],
+        ),
+        case("T", vec![gradient("-15", "0", "15.8"), settlement(2, "5"), settlement(3, "-2")]),
+    ];
+    member
+}
+
+/// A tapered cantilever with a prop.
+pub fn tapered() -> Member {
+    let sections = vec![section("root", "60000", Some("700")), section("tip", "9000", Some("280"))];
+    let taper = Some(Taper { to: 1, law: TaperLaw::Cubic });
+    let supports = vec![support("A", "0", 'F'), support("P", "3.2", 'R')];
+    let mut member = member(sections, &[("3.2", 0, taper), ("0.8", 1, None)], supports, &[]);
+    member.cases =
+        vec![case("Q", vec![linear("20", "5", "0", "4"), point("6", "4"), settlement(1, "3"), rotation(0, "-1.5")])];
+    member
+}

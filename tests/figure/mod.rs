@@ -2,6 +2,7 @@
 
 pub mod build;
 mod plots;
+mod random;
 mod svg;
 
 use proofspan::figure::{self, COLUMN, Cut, Drawing, Words};
@@ -74,4 +75,85 @@ fn pictures_of_the_method_are_clean() {
         clean(&format!("chained-{width}"), &figure::chained(width));
         clean(&format!("signs-{width}"), &figure::signs(width));
     }
+}
+
+/// The check that holds all other checks here: it must see what it is there to see.
+#[test]
+fn the_collision_check_catches_what_overlaps() {
+    use proofspan::figure::{CollisionKind, Item};
+    let clean = figure::loads(&build::propped(), 0, &said(), COLUMN);
+    assert!(clean.collisions().is_empty());
+    let kinds = |drawing: &Drawing| -> Vec<CollisionKind> { drawing.collisions().iter().map(|c| c.kind).collect() };
+    let texts: Vec<usize> =
+        (0..clean.items.len()).filter(|index| matches!(clean.items[*index], Item::Text { .. })).collect();
+    let moved = |index: usize, dx: f64, dy: f64| {
+        let mut drawing = clean.clone();
+        if let Item::Text { at, .. } = &mut drawing.items[index] {
+            (at.x, at.y) = (at.x + dx, at.y + dy);
+        }
+        drawing
+    };
+    // A label laid over its neighbour.
+    let mut twice = clean.clone();
+    twice.items.push(clean.items[texts[0]].clone());
+    assert!(kinds(&twice).contains(&CollisionKind::TextText));
+    // The figure of the uniform load pushed down onto its line, and out of the paper.
+    let load = texts.iter().find(|index| format!("{:?}", clean.items[**index]).contains("14.00")).unwrap();
+    assert!(kinds(&moved(*load, 0.0, 1.2)).contains(&CollisionKind::TextLine));
+    assert!(kinds(&moved(*load, -500.0, 0.0)).contains(&CollisionKind::Outside));
+    // Far enough down it lies across the member's outline.
+    let hits =
+        (1..120).any(|step| kinds(&moved(*load, 0.0, f64::from(step) * 0.1)).contains(&CollisionKind::TextOutline));
+    assert!(hits);
+}
+
+#[test]
+fn the_same_member_gives_the_same_drawing_in_thousandths() {
+    let (first, second) = (build::crowded(), build::crowded());
+    let drawing = figure::loads(&first, 0, &Words::default(), COLUMN);
+    assert_eq!(drawing, figure::loads(&second, 0, &Words::default(), COLUMN));
+    let text = serde_json::to_string(&drawing).unwrap();
+    assert!(text.len() > 1000);
+    for figure in text.split(|c: char| !(c.is_ascii_digit() || c == '.' || c == '-')) {
+        let places = figure.split_once('.').map_or(0, |(_, fraction)| fraction.len());
+        assert!(places <= 3 || figure.starts_with("0."), "{figure}");
+    }
+}
+
+#[test]
+fn alternative_texts_say_what_is_shown() {
+    let member = build::propped();
+    let sketch = figure::elevation(&member, &said(), COLUMN).alt;
+    assert!(sketch.contains("A (fixed) at 0 m") && sketch.contains("41\u{2009}200 kN m²"), "{sketch}");
+    let load = figure::loads(&member, 1, &said(), COLUMN).alt;
+    for part in ["2 kN/m downward to 6 kN/m downward from 0 m to 4 m", "3.5 kN/m upward", "7.5 kN m counter-clockwise"]
+    {
+        assert!(load.contains(part), "{load}");
+    }
+    let released = figure::released(&member, &[Force(1)], &said(), COLUMN).alt;
+    assert!(released.contains("R.B, the upward force of support B"), "{released}");
+}
+
+#[test]
+fn ordinary_members_are_clean() {
+    for (name, member) in [("three", build::three_spans()), ("tapered", build::tapered())] {
+        let said = all_cuts(&member);
+        clean(&format!("{name}-elevation"), &figure::elevation(&member, &said, COLUMN));
+        for (index, case) in member.cases.iter().enumerate() {
+            clean(&format!("{name}-loads-{}", case.name), &figure::loads(&member, index, &Words::default(), COLUMN));
+        }
+        clean(&format!("{name}-released"), &figure::released(&member, &[Moment(1)], &said, COLUMN));
+        clean(&format!("{name}-bodies"), &figure::free_bodies(&member, &said, COLUMN));
+    }
+}
+
+#[test]
+fn a_member_read_from_a_deck_is_drawn_clean() {
+    let member = proofspan::member::build::read(proofspan::deck::starter()).unwrap().member;
+    let said = all_cuts(&member);
+    clean("starter-elevation", &figure::elevation(&member, &said, COLUMN));
+    for (index, case) in member.cases.iter().enumerate() {
+        clean(&format!("starter-loads-{}", case.name), &figure::loads(&member, index, &said, COLUMN));
+    }
+    clean("starter-bodies", &figure::free_bodies(&member, &said, COLUMN));
 }

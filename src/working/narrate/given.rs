@@ -3,6 +3,7 @@
 use std::collections::BTreeMap;
 
 use super::{Narrator, finding};
+use crate::analysis::Model;
 use crate::analysis::action::weight_per_length;
 use crate::analysis::equilibrium as sums;
 use crate::analysis::stiffness::{rigidity, shear};
@@ -99,30 +100,7 @@ impl Narrator<'_> {
     }
 
     fn name_places(&mut self) {
-        let taken: Vec<&str> = self
-            .member
-            .supports
-            .iter()
-            .map(|support| support.name.as_str())
-            .chain(self.member.hinges.iter().map(|hinge| hinge.name.as_str()))
-            .collect();
-        let mut letters = ('C'..='Z')
-            .map(|letter| letter.to_string())
-            .chain((1..).map(|count| format!("c{count}")))
-            .filter(|name| !taken.iter().any(|known| known.eq_ignore_ascii_case(name)));
-        let mut names: BTreeMap<Place, String> = BTreeMap::new();
-        for support in &self.member.supports {
-            names.insert(support.at, support.name.clone());
-        }
-        for hinge in &self.member.hinges {
-            names.entry(hinge.at).or_insert_with(|| hinge.name.clone());
-        }
-        names.entry(Place::ZERO).or_insert_with(|| "start".to_owned());
-        names.entry(self.member.end()).or_insert_with(|| "end".to_owned());
-        for piece in &self.analysis.model.pieces {
-            names.entry(piece.to).or_insert_with(|| letters.next().unwrap_or_default());
-        }
-        self.book.names = names;
+        self.book.names = place_names(self.member, &self.analysis.model);
     }
 
     fn segments(&mut self) {
@@ -521,4 +499,27 @@ fn newton_per_kilogram() -> crate::quantity::Unit {
 fn exact_metres(place: Place) -> Typed {
     let metre = crate::quantity::Unit::known("m").map(|metre| (metre, 1));
     Typed { terms: vec![crate::quantity::Term { figure: place.exact(), unit: crate::quantity::Unit::of(metre) }] }
+}
+
+/// What every cut is called in symbols: by its support or hinge, else by a letter of its own.
+pub fn place_names(member: &Member, model: &Model) -> BTreeMap<Place, String> {
+    let supports = member.supports.iter().map(|support| support.name.as_str());
+    let taken: Vec<&str> = supports.chain(member.hinges.iter().map(|hinge| hinge.name.as_str())).collect();
+    let mut letters = ('C'..='Z')
+        .map(|letter| letter.to_string())
+        .chain((1..).map(|count| format!("c{count}")))
+        .filter(|name| !taken.iter().any(|known| known.eq_ignore_ascii_case(name)));
+    let mut names: BTreeMap<Place, String> = BTreeMap::new();
+    for support in &member.supports {
+        names.insert(support.at, support.name.clone());
+    }
+    for hinge in &member.hinges {
+        names.entry(hinge.at).or_insert_with(|| hinge.name.clone());
+    }
+    names.entry(Place::ZERO).or_insert_with(|| "start".to_owned());
+    names.entry(member.end()).or_insert_with(|| "end".to_owned());
+    for piece in &model.pieces {
+        names.entry(piece.to).or_insert_with(|| letters.next().unwrap_or_default());
+    }
+    names
 }

@@ -9,6 +9,8 @@ mod state;
 mod sums;
 mod taper;
 
+pub use given::place_names;
+
 use super::draft::{Builder, Finding, Mismatch, Symbol};
 use super::step::Working;
 use super::trace::Traced;

@@ -73,13 +73,16 @@ impl<'a> Narrator<'a> {
         let zeros = vec![Traced::zero(); parts];
         let mut teller =
             Teller { narrator: self, state, loads, scale, told, joints: zeros.clone(), joint_moments: zeros, carried };
+        teller.narrator.builder.block("Reactions of the released member, by equilibrium of its parts.");
         teller.apply_unit();
         for part in &order {
             teller.balance(*part);
         }
+        teller.narrator.builder.block("Free bodies, right to left: shear and bending moment at every cut.");
         for part in 0..parts {
             teller.cut(part);
         }
+        teller.narrator.builder.block("Pieces chained, left to right: own bending of each piece, then shift of its wall, turn times length, own bending.");
         for part in order.iter().rev() {
             teller.chain(*part);
         }

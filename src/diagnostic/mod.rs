@@ -1,5 +1,9 @@
 //! Faults and warnings as data: how bad, where, what, and how to mend it.
 
+mod render;
+
+pub use render::render;
+
 use std::ops::Range;
 
 /// How bad a finding about the input is.

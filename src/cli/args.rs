@@ -1,0 +1,65 @@
+//! The command line's grammar; clap's types stand here only.
+
+use std::path::PathBuf;
+
+use clap::{Parser, Subcommand, ValueEnum};
+
+/// Calculation sheets for beams that a checker follows by hand.
+#[derive(Debug, Parser)]
+#[command(name = "proofspan", version, after_help = "Example: proofspan sheet examples/intake-beam.toml")]
+pub struct Args {
+    /// What to do.
+    #[command(subcommand)]
+    pub command: Command,
+}
+
+/// What to do.
+#[derive(Debug, Subcommand)]
+pub enum Command {
+    /// Write the calculation sheet of a deck as a PDF.
+    #[command(
+        after_help = "Example: proofspan sheet examples/intake-beam.toml -o intake.pdf\n\nExit status: 0 every limit holds, 1 could not be done, 2 the deck is at fault, 3 a limit is exceeded."
+    )]
+    Sheet {
+        /// The deck.
+        deck: PathBuf,
+        /// Where to write; beside the deck, with the ending pdf, where nothing is said.
+        #[arg(short, long)]
+        output: Option<PathBuf>,
+        /// The paper.
+        #[arg(long, value_enum, default_value_t = PaperSize::A4)]
+        paper: PaperSize,
+    },
+    /// Print results without a PDF.
+    #[command(
+        after_help = "Example: proofspan solve examples/intake-beam.toml --at \"2.5 m\"\n         proofspan solve examples/intake-beam.toml --json --working"
+    )]
+    Solve {
+        /// The deck.
+        deck: PathBuf,
+        /// Print one JSON object in SI base units.
+        #[arg(long)]
+        json: bool,
+        /// With --json: add the derivation.
+        #[arg(long, requires = "json")]
+        working: bool,
+        /// A further station, as in "2.5 m"; may be repeated.
+        #[arg(long, value_name = "STATION")]
+        at: Vec<String>,
+    },
+    /// Write a commented starter deck that runs as it stands.
+    #[command(after_help = "Example: proofspan new beam.toml")]
+    New {
+        /// The file to write; an existing one is left alone.
+        file: PathBuf,
+    },
+}
+
+/// Paper sizes.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum PaperSize {
+    /// 210 mm by 297 mm.
+    A4,
+    /// 8.5 in by 11 in.
+    Letter,
+}

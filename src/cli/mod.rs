@@ -1,0 +1,56 @@
+//! The command line: one thin file a command.
+
+mod args;
+mod new;
+mod output;
+mod sheet;
+mod solve;
+mod write;
+
+use std::process::ExitCode;
+
+use clap::Parser;
+
+use args::{Args, Command};
+
+/// How a command ended.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Outcome {
+    /// Done, and everything holds.
+    Holds,
+    /// Could not be done.
+    Failed,
+    /// The input is at fault; nothing was written.
+    BadInput,
+    /// Done, but something does not hold.
+    Fails,
+}
+
+impl From<Outcome> for ExitCode {
+    fn from(outcome: Outcome) -> Self {
+        Self::from(match outcome {
+            Outcome::Holds => 0,
+            Outcome::Failed => 1,
+            Outcome::BadInput => 2,
+            Outcome::Fails => 3,
+        })
+    }
+}
+
+/// Runs the command line.
+pub fn run() -> Outcome {
+    let args = match Args::try_parse() {
+        Ok(args) => args,
+        Err(error) => {
+            // Help and version are not faults.
+            let fault = error.use_stderr();
+            let _ = error.print();
+            return if fault { Outcome::BadInput } else { Outcome::Holds };
+        }
+    };
+    match args.command {
+        Command::Sheet { deck, output, paper } => sheet::run(&deck, output, paper),
+        Command::Solve { deck, json, working, at } => solve::run(&deck, json, working, &at),
+        Command::New { file } => new::run(&file),
+    }
+}
