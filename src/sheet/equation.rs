@@ -31,13 +31,16 @@ const WORDS: [&str; 45] = [
 
 impl Equation {
     /// Reads an equation. Only symbols, figures, quoted subscripts, fractions, roots, powers and brackets are let
-    /// through: nothing that could name a file, a function of the program or a page.
+    /// through: nothing that could name a file, a function of the program or a page. A word that is no symbol of
+    /// mathematics is set upright as a word.
     pub fn new(source: impl Into<String>, alt: impl Into<String>) -> Result<Self, NotMathematics> {
         let source = source.into();
-        match foreign(&parse_math(&source)) {
-            Some(found) => Err(NotMathematics { source, found }),
-            None => Ok(Self { source, alt: alt.into() }),
+        let tree = parse_math(&source);
+        if let Some(found) = foreign(&tree) {
+            return Err(NotMathematics { source, found });
         }
+        let source = if has_word(&tree) { spelt(&tree) } else { source };
+        Ok(Self { source, alt: alt.into() })
     }
 
     /// The source, safe to stand between dollar signs.
@@ -83,14 +86,35 @@ impl Equation {
 fn foreign(node: &SyntaxNode) -> Option<String> {
     use SyntaxKind as K;
     let plain = match node.kind() {
-        K::MathIdent => WORDS.contains(&node.leaf_text().as_str()),
+        K::MathIdent => true,
+        K::MathCall => callee(node).is_some_and(|word| WORDS.contains(&word)),
         K::Str => node.leaf_text().chars().all(|c| c != '\\'),
-        K::Math | K::MathText | K::MathShorthand | K::MathCall | K::MathArgs | K::MathDelimited | K::MathAttach => true,
+        K::Math | K::MathText | K::MathShorthand | K::MathArgs | K::MathDelimited | K::MathAttach => true,
         K::MathFrac | K::MathPrimes | K::MathRoot | K::Space | K::Slash | K::Hat | K::Underscore | K::Comma => true,
         K::LeftParen | K::RightParen | K::LeftBracket | K::RightBracket | K::Root | K::Text => true,
         _ => false,
     };
     if plain { node.children().find_map(foreign) } else { Some(node.full_text().to_string()) }
+}
+
+fn has_word(node: &SyntaxNode) -> bool {
+    is_word(node) || node.children().any(has_word)
+}
+
+/// A name that mathematics does not know: to be spelt, not looked up.
+fn is_word(node: &SyntaxNode) -> bool {
+    node.kind() == SyntaxKind::MathIdent && !WORDS.contains(&node.leaf_text().as_str())
+}
+
+/// The source with words between quotes.
+fn spelt(node: &SyntaxNode) -> String {
+    if is_word(node) {
+        return format!("\"{}\"", node.leaf_text());
+    }
+    match node.children().len() {
+        0 => node.leaf_text().to_string(),
+        _ => node.children().map(spelt).collect(),
+    }
 }
 
 fn has_fraction(node: &SyntaxNode) -> bool {
@@ -334,9 +358,16 @@ mod tests {
             r#"1.2 dot 10^(-5) dot abs(psi_"C,G")"#,
             r#"min(frac(L, 250), 0.02)"#,
             "a/b <= 3'",
+            "As_\"deck\" = root_\"1\" EI",
         ] {
             assert!(Equation::new(source, "").is_ok(), "{source}: {:?}", Equation::new(source, ""));
         }
+    }
+
+    #[test]
+    fn a_word_is_spelt_and_never_looked_up() {
+        let source = |text| Equation::new(text, "").map(|equation| equation.source().to_owned());
+        assert_eq!(source("As_\"deck\" = page + frac(row, psi)").as_deref(), Ok("\"As\"_\"deck\" = \"page\" + frac(\"row\", psi)"));
     }
 
     #[test]
