@@ -27,9 +27,9 @@ pub const TEXT_LINE: f64 = 4.7;
 /// From one line of a side note to the next.
 pub const NOTE_LINE: f64 = 3.2;
 /// White between the lines of one equation.
-pub const EQUATION_GAP: f64 = 2.9;
+pub const EQUATION_GAP: f64 = 2.3;
 /// White between lines of working.
-pub const LINE_GAP: f64 = 3.2;
+pub const LINE_GAP: f64 = 2.7;
 /// From one row of a table to the next, at least.
 pub const TABLE_LINE: f64 = 4.6;
 

@@ -27,6 +27,15 @@ pub fn literal(text: &str) -> String {
     out
 }
 
+/// A Typst string literal of a text that is never divided: figures with their units.
+pub fn undivided(text: &str) -> String {
+    let mut out = String::with_capacity(text.len() + 2);
+    out.push('"');
+    text.chars().for_each(|character| write(character, &mut out));
+    out.push('"');
+    out
+}
+
 /// Whether a character is drawn on the one before it, as accents are.
 const fn combines(character: char) -> bool {
     matches!(character, '\u{300}'..='\u{36F}' | '\u{483}'..='\u{489}' | '\u{591}'..='\u{5C7}' | '\u{64B}'..='\u{65F}' | '\u{20D0}'..='\u{20FF}')

@@ -108,6 +108,7 @@ impl Templates {
             environment.remove_filter(name);
         }
         environment.add_filter("prose", |text: &str| code(prose::prose(text)));
+        environment.add_filter("figures", |text: &str| code(prose::undivided(text)));
         environment.add_filter("plain", |text: &str| code(prose::plain(text)));
         environment.add_filter("short", |text: &str, width: f64| short(text, width, HEAD_PT));
         environment.add_filter("mm", |value: f64| code(format!("{}mm", plain(value))));

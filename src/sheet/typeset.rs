@@ -3,8 +3,9 @@
 use crate::quantity::{Decimal, Typed, Unit};
 
 /// Joins a figure to its unit and groups the digits: no line ends here.
-const NARROW: char = '\u{202F}';
-const FIXED: char = '\u{00A0}';
+pub(super) const NARROW: char = '\u{202F}';
+/// Joins words that stay on one line.
+pub(super) const FIXED: char = '\u{00A0}';
 
 /// A decimal as a sheet prints it: a true minus, digits grouped by thin spaces from 10 000 up, a power of ten where it
 /// would otherwise hold a long row of zeros. Trailing zeros are kept: they are significant.
@@ -20,11 +21,15 @@ pub fn figure(decimal: Decimal) -> String {
 fn plain(decimal: Decimal) -> String {
     let text = decimal.to_string();
     let (sign, digits) = text.strip_prefix('-').map_or(("", text.as_str()), |rest| ("−", rest));
+    format!("{sign}{}", grouped(digits))
+}
+
+/// Digits with at most one point, in groups of three before it from five digits up.
+pub(super) fn grouped(digits: &str) -> String {
     let (whole, fraction) = digits.split_once('.').map_or((digits, None), |(whole, fraction)| (whole, Some(fraction)));
-    let mut out = String::from(sign);
-    let grouped = whole.len() >= 5;
+    let mut out = String::new();
     for (index, digit) in whole.chars().enumerate() {
-        if grouped && index > 0 && (whole.len() - index).is_multiple_of(3) {
+        if whole.len() >= 5 && index > 0 && (whole.len() - index).is_multiple_of(3) {
             out.push(NARROW);
         }
         out.push(digit);

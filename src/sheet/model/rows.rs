@@ -1,8 +1,7 @@
 //! Steps of one shape as the rows of a table.
 
-use super::Equation;
-use super::line::{grouped, spoken};
 use super::table::{Cell, Column, Row, Table, aligned};
+use crate::sheet::equation::linear;
 use crate::sheet::template::Labels;
 use crate::sheet::{Fault, page, typeset};
 use crate::working;
@@ -24,10 +23,8 @@ pub fn tabulated(steps: &[&working::Step], labels: &Labels) -> Result<(String, O
         columns.extend(found.columns);
     } else {
         columns.push(Column::text(labels.get("working.numbers")?));
-        let numbers = steps.iter().map(|step| Equation::new(grouped(&step.numbers), spoken(&step.numbers)));
-        let cells: Result<Vec<Cell>, _> =
-            numbers.map(|made| made.map(|equation| Cell::Equation { equation })).collect();
-        body.push(cells?);
+        let numbers = steps.iter().map(|step| linear(&step.numbers).map(Cell::figures));
+        body.push(numbers.collect::<Result<Vec<Cell>, _>>()?);
     }
     columns.push(Column::figures(Cell::text(labels.get("working.result")?), &first.result.unit, end));
     body.push(results);
@@ -42,7 +39,6 @@ pub fn tabulated(steps: &[&working::Step], labels: &Labels) -> Result<(String, O
         row.bold = step.bold;
         table.rows.push(row);
     }
-    table.middle = table.rows.iter().flat_map(|row| &row.cells).any(|cell| matches!(cell, Cell::Equation { .. }));
     table.spread();
     Ok((shared.join(", "), Some(table)))
 }

@@ -101,7 +101,7 @@ impl Reader<'_> {
             index,
             number: chapter.number.to_string(),
             title: chapter.title.clone(),
-            new_sheet: matches!(about, "case" | "sums"),
+            new_sheet: false,
             figures: Vec::new(),
             recalled: self.recalled(chapter)?,
             steps: steps?,

@@ -98,6 +98,11 @@ impl Cell {
         Self::Prose { text: text.into() }
     }
 
+    /// Figures that no line may divide but at their plain spaces.
+    pub const fn figures(text: String) -> Self {
+        Self::Figure { text, pad: 0.0 }
+    }
+
     /// A figure with its unit.
     pub fn quantity(figure: Decimal, unit: &Unit) -> Self {
         Self::Text { text: typeset::quantity(figure, unit) }
