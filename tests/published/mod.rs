@@ -289,7 +289,7 @@ fn yielding_warm_and_hinged_members() {
         ("settlement, fixed", ONE, FIXED, &settle("B", 1.0), "R A", 12.0),
         ("settlement, propped", ONE, PROPPED, &settle("B", 1.0), "m A", 3.0),
         ("temperature, fixed", ONE, FIXED, WARM, "m A", -1.0),
-        ("temperature, propped", ONE, PROPPED, WARM, "R B", -1.5),
+        ("temperature, propped", ONE, PROPPED, WARM, "R B", 1.5),
         ("temperature, cantilever", ONE, CANTILEVER, WARM, "v 1", 0.5),
         ("temperature, simple", ONE, SIMPLE, WARM, "v 0.5", -1.0 / 8.0),
         ("tip spring", ONE, "A 0 fixed; B 1 elastic 7 free", UNIFORM, "R B", 3.0 / 8.0 * k / (k + 3.0)),

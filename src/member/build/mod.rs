@@ -33,6 +33,8 @@ struct Build<'t> {
     member: Member,
     support_spans: Vec<Range<usize>>,
     redundant_spans: Vec<Range<usize>>,
+    /// Whether the spans are what the deck means: a fault among the supports would make others of them.
+    spans_known: bool,
 }
 
 /// Reads a deck.
@@ -52,7 +54,7 @@ pub fn read(text: &str) -> Result<Reading, Vec<Diagnostic>> {
     let mut build =
         Build { reader: Reader::new(text), member: empty(), support_spans: Vec::new(), redundant_spans: Vec::new() };
     build.root(&root);
-    let Build { reader, mut member, support_spans, redundant_spans } = build;
+    let Build { reader, mut member, support_spans, redundant_spans, .. } = build;
     let (faults, warnings): (Vec<Diagnostic>, Vec<Diagnostic>) =
         reader.findings.into_iter().partition(|finding| finding.severity == Severity::Error);
     if !faults.is_empty() {
