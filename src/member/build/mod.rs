@@ -51,8 +51,13 @@ pub fn read(text: &str) -> Result<Reading, Vec<Diagnostic>> {
         return Err(errors.iter().map(|error| broken(error, text)).collect());
     }
     let root = Row { table: tree.get_ref(), span: whole.clone(), path: "the deck".to_owned() };
-    let mut build =
-        Build { reader: Reader::new(text), member: empty(), support_spans: Vec::new(), redundant_spans: Vec::new() };
+    let mut build = Build {
+        reader: Reader::new(text),
+        member: empty(),
+        support_spans: Vec::new(),
+        redundant_spans: Vec::new(),
+        spans_known: true,
+    };
     build.root(&root);
     let Build { reader, mut member, support_spans, redundant_spans, .. } = build;
     let (faults, warnings): (Vec<Diagnostic>, Vec<Diagnostic>) =
