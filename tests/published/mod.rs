@@ -161,7 +161,9 @@ fn continuous_beams() {
     let four = "A 0 pinned; B 1 roller; C 2 roller; D 3 roller; E 4 roller";
     let five = "A 0 pinned; B 1 roller; C 2 roller; D 3 roller; E 4 roller; F 5 roller";
     let two = "A 0 pinned; B 1 roller; C 2 roller";
-    let (l3, l4, l5): (&[(f64, f64)], &[(f64, f64)], &[(f64, f64)]) = (&[(3.0, 1.0)], &[(4.0, 1.0)], &[(5.0, 1.0)]);
+    let l3 = &[(3.0, 1.0)];
+    let l4 = &[(4.0, 1.0)];
+    let l5 = &[(5.0, 1.0)];
     let odd4 = format!("{}, {}", part(1.0, 0.0, 1.0), part(1.0, 2.0, 3.0));
     holds(&[
         ("2 spans", TWO, two, UNIFORM, "R A", 3.0 / 8.0),
@@ -197,7 +199,7 @@ fn worked_examples() {
     let text =
         deck(&[(60.0 * ft, 1e6)], &format!("A 0 fixed; B {} roller; C {} roller", 20.0 * ft, 50.0 * ft), w1, &[]);
     let results = solve(&text);
-    let kip = 4448.221_615_260_5;
+    let kip = 4_448.221_615_260_5;
     for (support, published) in [("R A", 20.25), ("R B", 53.5), ("R C", 43.25)] {
         assert!((look(&results, support) / kip - published).abs() < 5e-3, "W1 {support}");
     }

@@ -19,9 +19,9 @@ fn member() -> impl Strategy<Value = (Vec<(f64, f64)>, String, String)> {
             let total: f64 = parts.iter().map(|(length, _)| length).sum();
             let total = (total * 1e5).round() / 1e5;
             let mut supports = vec!["A 0 fixed".to_owned()];
-            for index in 1..=spans {
+            for (index, kind) in kinds.iter().enumerate().skip(1).take(spans) {
                 let at = (total * index as f64 / (spans as f64 + 0.5) * 1e3).floor() / 1e3;
-                supports.push(format!("S{index} {at} {}", kinds[index]));
+                supports.push(format!("S{index} {at} {kind}"));
             }
             let load = format!(
                 r#"{{ kind = "uniform", w = "{seed} N/m" }}, {{ kind = "point", p = "7 N", at = "{} m" }}, {{ kind = "settlement", support = "S1", by = "0.001 m" }}, {{ kind = "linear", w = ["0 N/m", "3 N/m"], from = "0.5 m", to = "{} m" }}"#,

@@ -113,7 +113,7 @@ impl Build<'_> {
             self.member.segments.iter().flat_map(|s| [Some(s.section), s.taper.map(|taper| taper.to)]).flatten();
         let bare: Vec<String> = sections
             .filter_map(|index| self.member.sections.get(index))
-            .filter(|section| section.weight.is_none())
+            .filter(|section| section.weight.is_none() && section.modulus.value.si() > 0.0)
             .map(|section| section.name.clone())
             .collect();
         if let Some(name) = bare.first() {
