@@ -200,7 +200,7 @@ impl Build<'_> {
             Some(value) => self.place(value, "to")?,
             None => self.member.end(),
         };
-        if from >= to {
+        if from >= to && (self.length_known || row.table.contains_key("to")) {
             self.reader.fault(
                 row.span.clone(),
                 format!("{} ends where it begins or before", row.path),
