@@ -188,7 +188,9 @@ const TOLERANCE: f64 = 1e-6;
 /// Figures by the first and the second route, case by case.
 pub fn both_routes(member: &Member, analysis: &Analysis) -> Vec<Row> {
     let mut rows = Vec::new();
-    for ((case, first), second) in member.cases.iter().zip(&analysis.cases).zip(crosscheck::solve(member)) {
+    for (index, ((case, first), second)) in
+        member.cases.iter().zip(&analysis.cases).zip(crosscheck::solve(member)).enumerate()
+    {
         let mut forces = Vec::new();
         let mut moments = Vec::new();
         let pairs = first.total.reactions.iter().zip(&second.reactions);
@@ -203,19 +205,31 @@ pub fn both_routes(member: &Member, analysis: &Analysis) -> Vec<Row> {
         }
         // Moments are measured by the greatest moment anywhere, not only where a support takes one.
         let arms = member.end().x() * forces.iter().map(|(_, force, _)| force.abs()).fold(0.0, f64::max) * 1e-3;
-        let field = analysis::Field { model: &analysis.model, solution: &first.total, actions: Vec::new() };
+        let Some(field) = analysis::Field::of_case(analysis, index) else { continue };
         let at = |place: Place| match field.model.cut_at(place) {
             Some(0) => field.ends(0).start.v,
             Some(cut) => field.ends(cut - 1).end.v,
             None => 0.0,
         };
-        let inside = first.total.pieces.iter().flat_map(|piece| [piece.start.v, piece.end.v]);
+        // Supports may all stand still: deflections are measured by the greatest one, the middles of pieces included.
+        let pieces = analysis.model.pieces.iter().enumerate();
+        let inside = pieces.flat_map(|(piece, geometry)| {
+            [field.ends(piece).start.v, field.ends(piece).end.v, field.inside(piece, geometry.length / 2.0).v]
+        });
         let greatest = inside.map(f64::abs).fold(0.0, f64::max);
         let named = |place: Place| format!("deflection at x = {} m in case {}", place.exact(), case.name);
         let mut deflections: Vec<(String, f64, f64)> =
             second.deflections.iter().map(|(place, v)| (named(*place), at(*place), *v)).collect();
         deflections.push((String::new(), greatest, greatest));
         moments.push((String::new(), arms, arms));
+        let pushes = moments.iter().map(|(_, moment, _)| moment.abs()).fold(0.0, f64::max) / member.end().x();
+        forces.push((String::new(), pushes, pushes));
+        let cuts = first.total.pieces.iter().flat_map(|piece| [piece.left, piece.right]);
+        let (shear, moment) = cuts.fold((0.0_f64, 0.0_f64), |(shear, moment), cut| {
+            (shear.max(cut.shear.abs()), moment.max(cut.moment.abs()))
+        });
+        forces.push((String::new(), shear.max(moment / member.end().x()), shear.max(moment / member.end().x())));
+        moments.push((String::new(), moment, moment));
         for list in [forces, moments, deflections] {
             rows.extend(crosscheck::compare(&list).into_iter().filter(|row| !row.what.is_empty()));
         }

@@ -1,6 +1,11 @@
 //! The one integration test binary.
-#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::indexing_slicing)]
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::indexing_slicing, clippy::disallowed_methods)]
 
+mod cli;
+mod faults;
 mod figure;
-
+mod published;
+mod random;
 mod sheet;
+mod support;
+mod working;

@@ -54,7 +54,7 @@ impl Skyline {
             let first = self.first(j);
             let mut column: Vec<f64> = Vec::with_capacity(j + 1 - first);
             for i in first..=j {
-                let start = first.max(upper.first(i));
+                let start = if i == j { first } else { first.max(upper.first(i)) };
                 let rows = (start..i).map(|k| {
                     let right = column.get(k - first).copied().unwrap_or_default();
                     let left = if i == j { right } else { upper.get(i, k) };

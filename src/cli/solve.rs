@@ -31,7 +31,7 @@ fn tables(calculation: &Calculation) {
     let member = &calculation.member;
     let (force, length, f, l) = match member.title.system {
         System::Si => (1e3, 1.0, "kN", "m"),
-        System::Us => (4448.221_615_260_5, 0.3048, "kip", "ft"),
+        System::Us => (4_448.221_615_260_5, 0.3048, "kip", "ft"),
     };
     let (tiny, t) = small(calculation);
     for (index, combination) in member.combinations.iter().enumerate() {

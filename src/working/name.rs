@@ -17,10 +17,11 @@ pub fn typeset(symbol: &Symbol, tag: &str) -> String {
         "EI" => "E I",
         "GA" => "G A",
         "dT" => "Delta T",
-        "qw" => "q",
+        "As" => "A",
         other => other,
     };
-    let parts: Vec<&str> = [symbol.sub.as_str(), tag].into_iter().filter(|part| !part.is_empty()).collect();
+    let shear = if symbol.base == "As" { "s" } else { "" };
+    let parts: Vec<&str> = [shear, symbol.sub.as_str(), tag].into_iter().filter(|part| !part.is_empty()).collect();
     let plain = |part: &str| -> String {
         part.chars().filter(|c| c.is_ascii_alphanumeric() || matches!(c, '_' | '.' | '-')).collect()
     };

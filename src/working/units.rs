@@ -52,7 +52,6 @@ const fn same(left: &[u8], right: &[u8]) -> bool {
 }
 
 const RAD: Atom = plain("rad");
-const MRAD: Atom = plain("mrad");
 const KELVIN: Atom = plain("K");
 const KILOGRAM: Atom = plain("kg");
 
@@ -85,19 +84,9 @@ impl Base {
         Unit::of([(self.small, 1)])
     }
 
-    /// The unit turns are shown in.
-    pub fn shown_turn(&self) -> Unit {
-        Unit::of([(MRAD, 1)])
-    }
-
     /// How many small units of length make one.
     pub fn small_per_length(&self) -> Unit {
         Unit::of([(self.small, 1), (self.length, -1)])
-    }
-
-    /// Milliradians to a radian.
-    pub fn small_per_turn(&self) -> Unit {
-        Unit::of([(MRAD, 1), (RAD, -1)])
     }
 
     /// Temperature difference.

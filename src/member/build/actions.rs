@@ -113,7 +113,7 @@ impl Build<'_> {
             self.member.segments.iter().flat_map(|s| [Some(s.section), s.taper.map(|taper| taper.to)]).flatten();
         let bare: Vec<String> = sections
             .filter_map(|index| self.member.sections.get(index))
-            .filter(|section| section.weight.is_none())
+            .filter(|section| section.weight.is_none() && section.modulus.value.si() > 0.0)
             .map(|section| section.name.clone())
             .collect();
         if let Some(name) = bare.first() {
@@ -200,7 +200,7 @@ impl Build<'_> {
             Some(value) => self.place(value, "to")?,
             None => self.member.end(),
         };
-        if from >= to {
+        if from >= to && (self.length_known || row.table.contains_key("to")) {
             self.reader.fault(
                 row.span.clone(),
                 format!("{} ends where it begins or before", row.path),

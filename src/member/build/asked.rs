@@ -167,7 +167,7 @@ impl Build<'_> {
                 .filter_map(|span| self.member.spans.get(*span))
                 .find(|span| span.is_cantilever())
                 .map(|span| span.name.clone());
-            if let Some(span_name) = cantilever
+            if let Some(span_name) = cantilever.filter(|_| self.spans_known)
                 && !row.table.contains_key("cantilever_length_factor")
                 && row.table.contains_key("ratio")
             {
@@ -175,7 +175,7 @@ impl Build<'_> {
                     format!("limit {name} covers the cantilever {span_name} without cantilever_length_factor");
                 self.reader.fault(span.clone(), message, "2 where the code doubles a cantilever's length, 1 where it gives cantilevers their own ratio; or name the spans");
             }
-            if combinations.is_empty() || spans.is_empty() {
+            if combinations.is_empty() || (spans.is_empty() && self.spans_known) {
                 self.reader.fault(
                     span,
                     format!("limit {name} applies to nothing"),
@@ -219,6 +219,9 @@ impl Build<'_> {
         let all: Vec<usize> = (0..self.member.spans.len()).collect();
         let Some(value) = row.table.get("spans") else { return all };
         let names: Vec<String> = self.member.spans.iter().map(|span| span.name.clone()).collect();
+        if !self.spans_known {
+            return all;
+        }
         self.indices(value, "span", &names).unwrap_or(all)
     }
 

@@ -282,6 +282,8 @@ impl Build<'_> {
     }
 
     pub(super) fn spans(&mut self) {
+        let fault = |finding: &crate::diagnostic::Diagnostic| finding.severity == crate::diagnostic::Severity::Error;
+        self.spans_known = !self.reader.findings.iter().any(fault);
         let holding: Vec<(usize, String, Place)> = self
             .member
             .supports

@@ -33,6 +33,10 @@ struct Build<'t> {
     member: Member,
     support_spans: Vec<Range<usize>>,
     redundant_spans: Vec<Range<usize>>,
+    /// Whether the spans are what the deck means: a fault among the supports would make others of them.
+    spans_known: bool,
+    /// Whether the member's length is what the deck means: a fault among the segments would make another of it.
+    length_known: bool,
 }
 
 /// Reads a deck.
@@ -49,10 +53,16 @@ pub fn read(text: &str) -> Result<Reading, Vec<Diagnostic>> {
         return Err(errors.iter().map(|error| broken(error, text)).collect());
     }
     let root = Row { table: tree.get_ref(), span: whole.clone(), path: "the deck".to_owned() };
-    let mut build =
-        Build { reader: Reader::new(text), member: empty(), support_spans: Vec::new(), redundant_spans: Vec::new() };
+    let mut build = Build {
+        reader: Reader::new(text),
+        member: empty(),
+        support_spans: Vec::new(),
+        redundant_spans: Vec::new(),
+        spans_known: true,
+        length_known: true,
+    };
     build.root(&root);
-    let Build { reader, mut member, support_spans, redundant_spans } = build;
+    let Build { reader, mut member, support_spans, redundant_spans, .. } = build;
     let (faults, warnings): (Vec<Diagnostic>, Vec<Diagnostic>) =
         reader.findings.into_iter().partition(|finding| finding.severity == Severity::Error);
     if !faults.is_empty() {
@@ -97,7 +107,9 @@ impl Build<'_> {
         self.format(root);
         self.title(root);
         self.sections(root);
+        let before = self.reader.findings.len();
         self.segments(root);
+        self.length_known = self.reader.findings.len() == before;
         self.supports(root);
         self.hinges(root);
         self.spans();
@@ -167,7 +179,7 @@ impl Build<'_> {
             return Some(end);
         }
         let (place, typed) = self.reader.metres(value, key)?;
-        if place < Place::ZERO || place > end {
+        if place < Place::ZERO || (place > end && self.length_known) {
             let message = format!("{key} lies off the member, which runs from 0 to {} m", end.exact());
             self.reader.fault(value.span(), message, "places are measured from the member's left end");
             return None;

@@ -10,6 +10,9 @@ use crate::sheet::template::Labels;
 use crate::sheet::{Fault, typeset};
 use crate::working::{self, Body, Chapters, Origin, Working};
 
+/// A chapter and block, and the steps used from there with their symbols.
+type Sources = ((usize, usize), Vec<(usize, String)>);
+
 /// A chapter of the working.
 #[derive(Clone, Debug, Serialize)]
 pub struct Chapter {
@@ -116,7 +119,7 @@ impl Reader<'_> {
 
     /// `From 1.2: L_1 = 4 m, L_2 = 5 m. From 1.4: EI_1 = 41 200 kN m².`
     fn recalled(&self, chapter: &working::Chapter) -> Result<String, Fault> {
-        let mut from: Vec<((usize, usize), Vec<(usize, String)>)> = Vec::new();
+        let mut from: Vec<Sources> = Vec::new();
         let indices = chapter.blocks.iter().flat_map(|block| match &block.body {
             Body::Lines(indices) | Body::Table(indices) => indices,
         });

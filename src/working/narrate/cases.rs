@@ -216,7 +216,10 @@ impl Narrator<'_> {
         let imposed = self.imposed(case);
         let scale = self.plain();
         let loads = Loads { acts: &acts, unit: None, imposed: &imposed };
+        // The released member's figures carry a nought, so that its reactions are not taken for the member's own.
+        self.builder.tag(format!("{}0", load_case.name));
         let released = self.tell(&solution.released, &loads, &scale);
+        self.builder.tag(load_case.name.clone());
         let redundants = self.compatibility(case, &released, &imposed, flexibility);
         let totals = self.superpose(case, &released, units, &redundants);
         self.builder.tag("");

@@ -238,6 +238,9 @@ impl Narrator<'_> {
             cut = self.near_end(&cut, &l, &acts, found.map(super::Finding::last), false);
         } else {
             self.builder.block(format!("The {title} stands at {name}."));
+            if !right {
+                cut = self.beyond_start(spot.piece, cut, values, &name);
+            }
         }
         let state = |narrator: &mut Self, letter, unit: (What, Unit), value: f64, figure: Traced| {
             let what = finding(format!("{title}, at {name}"), Symbol::new(letter, format!("{name}x")), unit, value)
@@ -259,6 +262,22 @@ impl Narrator<'_> {
             }
         }
         Worked { combination: 0, spot, x, v: sway.0 }
+    }
+
+    /// Just right of a piece's left end: what acts exactly there lies to the left of it.
+    fn beyond_start(&mut self, index: usize, cut: Pair, values: &Values, name: &str) -> Pair {
+        let (mut forces, mut moments) = (vec![cut.0], vec![cut.1]);
+        for act in self.book.combined.get(index).cloned().unwrap_or_default() {
+            match act.action {
+                Action::Force { a, .. } if a <= 0.0 => forces.push(-act.first),
+                Action::Couple { a, .. } if a <= 0.0 => moments.push(act.first),
+                _ => {}
+            }
+        }
+        let scale = self.plain();
+        let [shear, moment] =
+            self.cut_findings(values.right, &format!("just right of {name}"), &format!("{name}p"), &scale);
+        (self.total(shear.last(), forces, false), self.total(moment.last(), moments, false))
     }
 
     /// Actions of the current combination that stand exactly at the right end of a piece, measured from there.
@@ -351,7 +370,8 @@ impl Narrator<'_> {
         let here = list(acts, index);
         let at_start = place == piece.from;
         let after = if at_start {
-            totals.left.get(index).cloned().unwrap_or_else(zero)
+            let name = self.place_name(piece.from);
+            self.beyond_start(index, totals.left.get(index).cloned().unwrap_or_else(zero), &values, &name)
         } else {
             self.cut_inside(&piece, &right, here, distance, &x, false, &inside, &format!("{count}r"), Want::Moment)
         };

@@ -179,7 +179,6 @@ impl Narrator<'_> {
         step
     }
 
-    #[expect(clippy::too_many_arguments, reason = "a cut needs its place, its length and what acts")]
     fn sample_cut(
         &mut self,
         sample: &Station,
