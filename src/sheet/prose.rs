@@ -4,7 +4,7 @@ use super::fonts::{Face, text_width};
 use super::typeset::superscript;
 
 /// The longest word that is never divided, in characters: 35 mm of the smallest text hold it.
-const LONGEST: usize = 24;
+pub const LONGEST: usize = 24;
 /// Where a longer word may be divided: after every so many characters.
 const PIECE: usize = 8;
 

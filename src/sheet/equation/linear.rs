@@ -174,7 +174,8 @@ impl Writer {
         let texts: Vec<String> = parts.iter().map(|part| self.inside(part)).collect();
         let (over, under) = (texts.first().map_or("", String::as_str), texts.get(1).map_or("", String::as_str));
         let over = if has_sign(over, &['+', '−']) { format!("({over})") } else { over.to_owned() };
-        let under = if has_sign(under, &['+', '−', '×', '·', '/']) { format!("({under})") } else { under.to_owned() };
+        let under =
+            if has_sign(under, &['+', '−', '×', '·', '/']) { format!("({under})") } else { under.to_owned() };
         self.push(&format!("{over}/{under}"));
     }
 
@@ -229,10 +230,7 @@ mod tests {
         for (source, wanted) in [
             ("14.00 times 5.000 + 36.00", "14.00 × 5.000 + 36.00"),
             ("-(-1) times 5", "−(−1) × 5"),
-            (
-                "frac((-17.50) times 4^3, 3 times 41200) - frac(5 times 4^2, 2)",
-                "(−17.50) × 4³/(3 × 41 200) − 5 × 4²/2",
-            ),
+            ("frac((-17.50) times 4^3, 3 times 41200) - frac(5 times 4^2, 2)", "(−17.50) × 4³/(3 × 41 200) − 5 × 4²/2"),
             ("frac((2 + 6) times 4, 2) + (-3.5) times 5", "(2 + 6) × 4/2 + (−3.5) × 5"),
             ("frac(1 + 2, 3)", "(1 + 2)/3"),
             ("frac(-9.5, 0.0069)", "−9.5/0.0069"),

@@ -156,7 +156,10 @@ mod tests {
     #[test]
     fn a_word_is_spelt_and_never_looked_up() {
         let source = |text| Equation::new(text, "").map(|equation| equation.source().to_owned());
-        assert_eq!(source("As_\"deck\" = page + frac(row, psi)").as_deref(), Ok("\"As\"_\"deck\" = \"page\" + frac(\"row\", psi)"));
+        assert_eq!(
+            source("As_\"deck\" = page + frac(row, psi)").as_deref(),
+            Ok("\"As\"_\"deck\" = \"page\" + frac(\"row\", psi)")
+        );
     }
 
     #[test]

@@ -102,7 +102,18 @@ impl Model {
                 .push(gallery.hang(String::new(), figure::loads(member, chapter.index, &words, figure::COLUMN)));
         }
         model.drawings = gallery.drawings;
+        model.tables().for_each(Table::fit);
         Ok(model)
+    }
+
+    /// Every table of the sheet.
+    fn tables(&mut self) -> impl Iterator<Item = &mut Table> {
+        let given = self.given.limits.iter_mut().chain(&mut self.given.inputs).chain([&mut self.given.combinations]);
+        let steps =
+            self.chapters.iter_mut().flat_map(|chapter| &mut chapter.steps).filter_map(|step| step.table.as_mut());
+        let sums = self.sums.tables.iter_mut().chain(&mut self.sums.reactions);
+        let trust = self.trust.crosschecks.iter_mut().chain(&mut self.trust.revisions).chain(&mut self.trust.hashes);
+        given.chain(&mut self.method.cases).chain(steps).chain(sums).chain(&mut self.checks.table).chain(trust)
     }
 }
 
@@ -208,7 +219,7 @@ fn hashes(parts: &Parts<'_>) -> Result<Option<Table>, Fault> {
     use super::{Cell, Column, Row};
     let labels = parts.labels;
     let columns =
-        vec![Column::text(labels.get("trust.file")?).wide(24.0), Column::text(labels.get("trust.sha256")?).wide(96.0)];
+        vec![Column::text(labels.get("trust.file")?).wide(36.0), Column::text(labels.get("trust.sha256")?).wide(84.0)];
     let mut table = Table::new("", labels.get("trust.hashes")?, columns);
     for (name, hash) in &parts.findings.hashes {
         // Groups of eight: a hash is compared by eye.

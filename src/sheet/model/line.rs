@@ -130,7 +130,8 @@ fn spread(line: &mut Line, end: f64) {
     let wide = |text: &str| text_width(text, Face::Regular, page::TEXT_PT);
     line.symbols = line.symbols.iter().flat_map(|one| one.lines(page::COLUMN, rest, page::TEXT_PT)).collect();
     let numbers = line.numbers.iter();
-    line.numbers = numbers.flat_map(|one| linear_lines(one, page::COLUMN - page::INDENT, rest, page::TEXT_PT)).collect();
+    line.numbers =
+        numbers.flat_map(|one| linear_lines(one, page::COLUMN - page::INDENT, rest, page::TEXT_PT)).collect();
     let room = |index: usize, first: f64| if index == 0 { first } else { rest };
     let symbols = line.symbols.iter().map(|one| one.width(page::TEXT_PT));
     line.shrink = symbols.enumerate().any(|(index, width)| width > room(index, page::COLUMN));

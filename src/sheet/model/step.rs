@@ -64,8 +64,11 @@ pub fn chapters(working: &Working, labels: &Labels) -> Result<Vec<Chapter>, Faul
     working.chapters.iter().map(|chapter| reader.chapter(chapter)).collect()
 }
 
+/// Chapter and block.
+type Home = (usize, usize);
+
 /// Chapter and block of every step, by its index.
-fn homes(working: &Working) -> Vec<Option<(usize, usize)>> {
+fn homes(working: &Working) -> Vec<Option<Home>> {
     let mut homes = vec![None; working.steps.len()];
     for (chapter, of) in working.chapters.iter().enumerate() {
         for (block, of) in of.blocks.iter().enumerate() {
@@ -84,7 +87,7 @@ fn homes(working: &Working) -> Vec<Option<(usize, usize)>> {
 pub(super) struct Reader<'a> {
     pub working: &'a Working,
     pub labels: &'a Labels,
-    homes: Vec<Option<(usize, usize)>>,
+    homes: Vec<Option<Home>>,
 }
 
 impl Reader<'_> {
@@ -147,7 +150,7 @@ impl Reader<'_> {
         Ok(sentences.collect::<Vec<_>>().join(" "))
     }
 
-    fn block_number(&self, (chapter, block): (usize, usize)) -> &str {
+    fn block_number(&self, (chapter, block): Home) -> &str {
         let chapter = self.working.chapters.get(chapter);
         chapter.and_then(|chapter| chapter.blocks.get(block)).map_or("", |block| block.number.as_str())
     }

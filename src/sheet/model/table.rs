@@ -4,8 +4,9 @@ use serde::Serialize;
 
 use super::Equation;
 use crate::quantity::{Decimal, Unit};
-use crate::sheet::fonts::{Face, text_width};
+use crate::sheet::fonts::{Face, MM_PER_PT, text_width};
 use crate::sheet::page;
+use crate::sheet::prose::LONGEST;
 use crate::sheet::typeset;
 
 /// A table: heads, then rows.
@@ -108,11 +109,27 @@ impl Cell {
         Self::Text { text: typeset::quantity(figure, unit) }
     }
 
+    /// Width in mm of the longest word at a size in pt; very long ones do not count, they may be divided.
+    fn longest(&self, bold: bool, size_pt: f64) -> f64 {
+        let face = if bold { Face::Bold } else { Face::Regular };
+        match self {
+            Self::Text { text } | Self::Prose { text } => {
+                let words = text.split(' ').filter(|word| word.chars().count() <= LONGEST);
+                words.map(|word| text_width(word, face, size_pt)).fold(0.0, f64::max)
+            }
+            Self::Figure { text, pad } => {
+                let words = text.split(' ').map(|word| text_width(word, face, size_pt));
+                words.fold(0.0, f64::max) + pad * size_pt * MM_PER_PT
+            }
+            Self::Equation { equation } => equation.width(size_pt),
+        }
+    }
+
     /// Estimated width in mm at a size in pt.
     pub fn width(&self, size_pt: f64) -> f64 {
         match self {
             Self::Text { text } | Self::Prose { text } => text_width(text, Face::Regular, size_pt),
-            Self::Figure { text, pad } => text_width(text, Face::Regular, size_pt) + pad * size_pt * 25.4 / 72.0,
+            Self::Figure { text, pad } => text_width(text, Face::Regular, size_pt) + pad * size_pt * MM_PER_PT,
             Self::Equation { equation } => equation.width(size_pt),
         }
     }
@@ -128,7 +145,7 @@ pub fn aligned(figures: &[Decimal]) -> Vec<Cell> {
         }
         text.split_once('.')
             .map_or(0.0, |(_, decimals)| text_width(".", Face::Regular, 1.0) + text_width(decimals, Face::Regular, 1.0))
-            / crate::sheet::fonts::MM_PER_PT
+            / MM_PER_PT
     };
     let longest = texts.iter().map(|text| tail(text)).fold(0.0, f64::max);
     texts.into_iter().map(|text| Cell::Figure { pad: thousandth(longest - tail(&text)), text }).collect()
@@ -170,6 +187,36 @@ impl Table {
         Self { title: title.into(), alt: alt.into(), middle: false, columns, rows: Vec::new() }
     }
 
+    /// Widens columns whose longest word does not fit, at the cost of those that have width to spare.
+    ///
+    /// Where the words of a row are wider than the text column altogether, they stay as they are.
+    pub fn fit(&mut self) {
+        let fixed: f64 = self.columns.iter().map(|column| column.width).sum();
+        let needs: Vec<f64> = (0..self.columns.len()).map(|index| self.need(index)).collect();
+        let gaps = || self.columns.iter().zip(&needs).filter(|(c, _)| c.width > 0.0).map(|(c, need)| c.width - need);
+        let short: f64 = gaps().map(|gap| (-gap).max(0.0)).sum();
+        let spare: f64 = gaps().map(|gap| gap.max(0.0)).sum();
+        let free = self.columns.iter().any(|column| column.width <= 0.0);
+        let over = if free { 0.0 } else { (fixed + short - page::COLUMN).max(0.0) };
+        if short <= 0.0 && over <= 0.0 {
+            return;
+        }
+        let share = if spare > 0.0 { (over / spare).min(1.0) } else { 0.0 };
+        for (column, need) in self.columns.iter_mut().zip(&needs).filter(|(column, _)| column.width > 0.0) {
+            let slack = column.width - need;
+            column.width = page::tenth(if slack > 0.0 { column.width - slack * share } else { *need });
+        }
+    }
+
+    /// Width of a column's longest word with the white around it.
+    fn need(&self, index: usize) -> f64 {
+        let column = self.columns.get(index);
+        let head = column.map_or(0.0, |column| column.head.longest(false, page::TABLE_PT));
+        let unit = column.map_or(0.0, |column| text_width(&column.unit, Face::Regular, 8.0));
+        let cells = self.rows.iter().filter_map(|row| Some(row.cells.get(index)?.longest(row.bold, page::TABLE_PT)));
+        cells.fold(head.max(unit), f64::max) + 2.6
+    }
+
     /// Gives the width that is left to the columns alike, where all of them have a width of their own.
     pub fn spread(&mut self) {
         let used: f64 = self.columns.iter().map(|column| column.width).sum();
@@ -180,5 +227,27 @@ impl Table {
                 column.width = page::tenth(column.width + share.min(8.0) - 0.05);
             }
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::{Cell, Column, Row, Table};
+    use crate::sheet::page;
+
+    #[test]
+    fn a_column_is_widened_for_its_longest_word_and_the_table_stays_within() {
+        let columns = vec![Column::text("a").wide(80.0), Column::text("b").wide(30.0), Column::text("").wide(10.0)];
+        let mut table = Table::new("", "", columns);
+        let mut row = Row::of(vec![Cell::text("some words"), Cell::text("b"), Cell::text("FAILS")]);
+        row.bold = true;
+        table.rows.push(row);
+        table.fit();
+        let widths: Vec<f64> = table.columns.iter().map(|column| column.width).collect();
+        assert!(widths[2] > 12.0, "{widths:?}");
+        assert!(widths.iter().sum::<f64>() <= page::COLUMN + 0.2, "{widths:?}");
+        let before = table.clone();
+        table.fit();
+        assert_eq!(table, before);
     }
 }
