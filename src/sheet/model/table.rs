@@ -198,7 +198,8 @@ impl Table {
         let spare: f64 = gaps().map(|gap| gap.max(0.0)).sum();
         let free = self.columns.iter().any(|column| column.width <= 0.0);
         let over = if free { 0.0 } else { (fixed + short - page::COLUMN).max(0.0) };
-        if short <= 0.0 && over <= 0.0 {
+        // Less than a tenth of a millimetre a column is rounding.
+        if short <= 0.1 * needs.len() as f64 && over <= 0.1 * needs.len() as f64 {
             return;
         }
         let share = if spare > 0.0 { (over / spare).min(1.0) } else { 0.0 };
