@@ -191,13 +191,23 @@ impl Table {
     ///
     /// Where the words of a row are wider than the text column altogether, they stay as they are.
     pub fn fit(&mut self) {
-        let fixed: f64 = self.columns.iter().map(|column| column.width).sum();
         let needs: Vec<f64> = (0..self.columns.len()).map(|index| self.need(index)).collect();
+        let given: f64 = self.columns.iter().map(|column| column.width).sum();
+        let free = self.columns.iter().filter(|column| column.width <= 0.0).count();
+        let share = (page::COLUMN - given).max(0.0) / free.max(1) as f64;
+        // A column that takes what is left is given a width where that is too little.
+        for (column, need) in self.columns.iter_mut().zip(&needs) {
+            if column.width <= 0.0 && *need > share {
+                column.width = need.min(page::COLUMN / 2.0);
+            }
+        }
+        let free = self.columns.iter().zip(&needs).filter(|(column, _)| column.width <= 0.0);
+        let kept: f64 = free.map(|(_, need)| need).sum();
+        let fixed: f64 = kept + self.columns.iter().map(|column| column.width).sum::<f64>();
         let gaps = || self.columns.iter().zip(&needs).filter(|(c, _)| c.width > 0.0).map(|(c, need)| c.width - need);
         let short: f64 = gaps().map(|gap| (-gap).max(0.0)).sum();
         let spare: f64 = gaps().map(|gap| gap.max(0.0)).sum();
-        let free = self.columns.iter().any(|column| column.width <= 0.0);
-        let over = if free { 0.0 } else { (fixed + short - page::COLUMN).max(0.0) };
+        let over = (fixed + short - page::COLUMN).max(0.0);
         // Less than a tenth of a millimetre a column is rounding.
         if short <= 0.1 * needs.len() as f64 && over <= 0.1 * needs.len() as f64 {
             return;
@@ -247,6 +257,16 @@ mod tests {
         let widths: Vec<f64> = table.columns.iter().map(|column| column.width).collect();
         assert!(widths[2] > 11.0, "{widths:?}");
         assert!(widths.iter().sum::<f64>() <= page::COLUMN + 0.2, "{widths:?}");
+        let before = table.clone();
+        table.fit();
+        assert_eq!(table, before);
+
+        table.columns[0].width = 84.0;
+        table.columns[1].width = 34.0;
+        table.columns[2].width = 0.0;
+        table.fit();
+        let widths: Vec<f64> = table.columns.iter().map(|column| column.width).collect();
+        assert!(widths[2] > 11.0 && widths.iter().sum::<f64>() <= page::COLUMN + 0.2, "{widths:?}");
         let before = table.clone();
         table.fit();
         assert_eq!(table, before);
