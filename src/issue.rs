@@ -79,7 +79,6 @@ fn findings(calculation: &Calculation, working: &Working, file: &str) -> Finding
         uplift: uplift(calculation, working),
         findings: failures(calculation),
         checks: checks(calculation, working),
-        sums: sums(calculation, working),
         reactions: reactions(calculation, working),
         plots: plots(calculation, working),
         crosschecks: crosschecks(calculation),
@@ -182,54 +181,6 @@ fn checks(calculation: &Calculation, working: &Working) -> Option<Table> {
         table.rows.push(Row { bold: !check.pass, ..Row::of(cells.into_iter().map(Cell::text).collect()) });
     }
     Some(table)
-}
-
-/// Reactions and redundants of all cases and combinations, some columns a table.
-fn sums(calculation: &Calculation, working: &Working) -> Vec<Table> {
-    let member = &calculation.member;
-    let cases = member.cases.iter().map(|case| (case.name.clone(), false));
-    let combinations = member.combinations.iter().map(|combination| (combination.name.clone(), true));
-    let columns: Vec<(String, bool)> = cases.chain(combinations).collect();
-    let mut rows: Vec<(String, String)> = Vec::new();
-    for support in &member.supports {
-        if support.holds_deflection() {
-            rows.push((format!("R_{}", support.name), format!("R_{}", support.name)));
-        }
-        if support.holds_rotation() {
-            rows.push((format!("m_{}", support.name), format!("m_{}", support.name)));
-        }
-    }
-    for redundant in &calculation.analysis.model.redundants {
-        let name = redundant.name(member).replace('.', "_");
-        if !rows.iter().any(|(known, _)| *known == name) {
-            rows.push((name.clone(), name));
-        }
-    }
-    let mut tables = Vec::new();
-    for group in columns.chunks(6) {
-        let mut heads = vec![head("", 16.0)];
-        heads.extend(group.iter().map(|(name, _)| Column { align: sheet::model::Align::Right, ..head(name, 16.5) }));
-        let mut table = Table::new(
-            "Reactions and redundants: load cases, then combinations. Forces upward, moments of supports counter-clockwise.",
-            "Reactions and redundants by case and combination",
-            heads,
-        );
-        for (symbol, label) in &rows {
-            let mut cells = vec![Cell::prose(label.clone())];
-            for (tag, _) in group {
-                let step = find(working, tag, symbol);
-                cells.push(Cell::text(
-                    step.map_or_else(
-                        || "–".to_owned(),
-                        |step| typeset::quantity(step.result.printed, &step.result.unit),
-                    ),
-                ));
-            }
-            table.rows.push(Row::of(cells));
-        }
-        tables.push(table);
-    }
-    tables
 }
 
 /// Least and greatest reaction of each support by purpose, with the combination named.

@@ -70,6 +70,35 @@ pub struct DraftBlock {
     pub sentence: String,
     /// Indices of its steps.
     pub steps: Vec<usize>,
+    /// Other blocks that it may stand beside.
+    pub likes: Option<Likes>,
+    /// How its steps are set, once blocks have been gathered.
+    pub set: Set,
+}
+
+/// Which blocks may stand side by side as columns of one grid, if their steps have the same shapes.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Likes {
+    /// The same for all that may stand together.
+    pub key: String,
+    /// What the column is about.
+    pub head: (String, String),
+    /// From how many on they do.
+    pub fewest: usize,
+    /// The sentence above the grid.
+    pub sentence: String,
+}
+
+/// How the steps of a block are set.
+#[derive(Clone, Debug, PartialEq, Eq, Default)]
+pub enum Set {
+    /// Lines, or a table where all have one shape.
+    #[default]
+    Apart,
+    /// A grid: column by column, each of as many steps as there are rows.
+    Grid(Vec<(String, String)>),
+    /// Weighted sums: row by row, each step's column.
+    Matrix(Vec<(String, String)>, Vec<(usize, usize)>),
 }
 
 /// A chapter in the making.
@@ -174,10 +203,37 @@ impl Builder {
     pub fn block(&mut self, sentence: impl Into<String>) -> Slot {
         let chapter = self.chapters.len().saturating_sub(1);
         if let Some(open) = self.chapters.last_mut() {
-            open.blocks.push(DraftBlock { sentence: sentence.into(), steps: Vec::new() });
+            open.blocks.push(DraftBlock {
+                sentence: sentence.into(),
+                steps: Vec::new(),
+                likes: None,
+                set: Set::Apart,
+            });
             self.slot = (chapter, open.blocks.len() - 1);
         }
         self.slot
+    }
+
+    /// Opens a block that may stand beside others like it.
+    pub fn block_like(&mut self, sentence: impl Into<String>, likes: Likes) -> Slot {
+        let slot = self.block(sentence);
+        if let Some(block) = self.open_block() {
+            block.likes = Some(likes);
+        }
+        slot
+    }
+
+    /// The block that is written to.
+    pub fn open_block(&mut self) -> Option<&mut DraftBlock> {
+        let (chapter, block) = self.slot;
+        self.chapters.get_mut(chapter)?.blocks.get_mut(block)
+    }
+
+    /// The steps of the block that is written to.
+    pub fn open_steps(&self) -> &[usize] {
+        let (chapter, block) = self.slot;
+        let block = self.chapters.get(chapter).and_then(|chapter| chapter.blocks.get(block));
+        block.map_or(&[], |block| block.steps.as_slice())
     }
 
     /// Says where conversions are written.

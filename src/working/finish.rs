@@ -8,10 +8,10 @@
 
 use std::collections::BTreeMap;
 
-use super::draft::{Builder, Class, Draft};
+use super::draft::{Builder, Class, Draft, Set};
 use super::exact::Exact;
 use super::name;
-use super::step::{Block, Body, Chapter, Figure, Input, Origin, Step, Working};
+use super::step::{Block, Body, Chapter, Figure, Grid, Input, Origin, Step, Working};
 use super::trace::Source;
 use super::units::What;
 use crate::quantity::Decimal;
@@ -23,7 +23,8 @@ const MOST: u32 = 12;
 
 impl Builder {
     /// Prints the drafts.
-    pub fn finish(self) -> Working {
+    pub fn finish(mut self) -> Working {
+        self.gather();
         let order: Vec<usize> =
             self.chapters.iter().flat_map(|c| &c.blocks).flat_map(|b| b.steps.iter().copied()).collect();
         let greatest = self.greatest();
@@ -120,10 +121,16 @@ impl Builder {
                         *place = steps.len();
                     }
                     indices.push(steps.len());
-                    let id = format!("{label}.{}", line + 1);
+                    let id = format!("{label}.{}", block.set.line(line, block.steps.len()));
                     steps.push(self.step(draft, id, printed.get(*index).copied().flatten(), printed, &places));
                 }
-                let body = self.body(&block.steps, indices);
+                let body = match &block.set {
+                    Set::Apart => self.body(&block.steps, indices),
+                    Set::Grid(heads) => Body::Grid(grid(heads, indices.len(), |rows, row, column| {
+                        indices.get(column * rows + row).copied()
+                    })),
+                    Set::Matrix(heads, cells) => Body::Matrix(matrix(heads, cells, &indices)),
+                };
                 let mut notes: Vec<String> = Vec::new();
                 for basis in block.steps.iter().filter_map(|index| self.drafts.get(*index)).map(|draft| draft.basis) {
                     if !basis.is_empty() && !notes.iter().any(|note| note == basis) {
@@ -188,6 +195,53 @@ impl Builder {
             bold: draft.bold,
         }
     }
+}
+
+impl Set {
+    /// How a step of a block is numbered: `3`, or in a grid by row and column, `3b`.
+    fn line(&self, index: usize, steps: usize) -> String {
+        match self {
+            Self::Apart => (index + 1).to_string(),
+            Self::Grid(heads) => {
+                let rows = (steps / heads.len().max(1)).max(1);
+                format!("{}{}", index % rows + 1, letter(index / rows))
+            }
+            Self::Matrix(_, cells) => {
+                let (row, column) = cells.get(index).copied().unwrap_or_default();
+                format!("{}{}", row + 1, letter(column))
+            }
+        }
+    }
+}
+
+/// Columns are told apart by letters: a to z, then aa.
+pub fn letter(index: usize) -> String {
+    let one = |index: usize| char::from(b'a' + u8::try_from(index % 26).unwrap_or(0));
+    match (index / 26).checked_sub(1) {
+        Some(before) => format!("{}{}", letter(before), one(index)),
+        None => one(index).to_string(),
+    }
+}
+
+fn grid(
+    heads: &[(String, String)],
+    steps: usize,
+    at: impl Fn(usize, usize, usize) -> Option<usize>,
+) -> Grid {
+    let rows = steps / heads.len().max(1);
+    let row = |row| (0..heads.len()).map(|column| at(rows, row, column)).collect();
+    Grid { heads: heads.to_vec(), rows: (0..rows).map(row).collect() }
+}
+
+fn matrix(heads: &[(String, String)], cells: &[(usize, usize)], steps: &[usize]) -> Grid {
+    let count = cells.iter().map(|(row, _)| row + 1).max().unwrap_or(0);
+    let mut rows = vec![vec![None; heads.len()]; count];
+    for ((row, column), step) in cells.iter().zip(steps) {
+        if let Some(cell) = rows.get_mut(*row).and_then(|row| row.get_mut(*column)) {
+            *cell = Some(*step);
+        }
+    }
+    Grid { heads: heads.to_vec(), rows }
 }
 
 /// The analysis's value in the step's unit.

@@ -5,6 +5,7 @@
 mod draft;
 mod exact;
 mod finish;
+mod gather;
 mod name;
 mod narrate;
 mod notation;
@@ -13,5 +14,6 @@ mod trace;
 mod units;
 
 pub use draft::Mismatch;
+pub use finish::letter as column_letter;
 pub use narrate::{Demand, narrate, place_names};
-pub use step::{Block, Body, Chapter, Chapters, Figure, Input, Origin, Step, Working};
+pub use step::{Block, Body, Chapter, Chapters, Figure, Grid, Input, Origin, Step, Working};

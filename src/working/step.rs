@@ -29,8 +29,8 @@ pub enum Chapters {
     Case(usize),
     /// Sums over cases, for all combinations.
     Sums,
-    /// Values at places inside the spans, for the combination with this index.
-    Places(usize),
+    /// Values at places inside the spans, of every combination.
+    Places,
     /// Allowable against found.
     Checks,
 }
@@ -68,6 +68,33 @@ pub enum Body {
     Lines(Vec<usize>),
     /// Steps that share one expression: the formula once, then a row each. Indices into [`Working::steps`].
     Table(Vec<usize>),
+    /// The same derivation for several places, spans or combinations: a row for each line, a column for each of them.
+    Grid(Grid),
+    /// Weighted sums: a row for each quantity, a column for each combination.
+    Matrix(Grid),
+}
+
+/// Steps by row and column.
+#[derive(Clone, Debug)]
+pub struct Grid {
+    /// What each column is about: a main line and a second one that may be empty.
+    pub heads: Vec<(String, String)>,
+    /// Indices into [`Working::steps`], row by row; a cell may be empty.
+    pub rows: Vec<Vec<Option<usize>>>,
+}
+
+impl Body {
+    /// Every step, in the order of the working.
+    pub fn steps(&self) -> Vec<usize> {
+        match self {
+            Self::Lines(steps) | Self::Table(steps) => steps.clone(),
+            Self::Grid(grid) | Self::Matrix(grid) => {
+                let mut steps: Vec<usize> = grid.rows.iter().flatten().filter_map(|step| *step).collect();
+                steps.sort_unstable();
+                steps
+            }
+        }
+    }
 }
 
 /// One step of the derivation.

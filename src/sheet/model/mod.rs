@@ -6,6 +6,7 @@
 
 mod compose;
 mod given;
+mod grid;
 mod line;
 mod rows;
 mod step;

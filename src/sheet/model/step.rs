@@ -49,10 +49,10 @@ pub struct Step {
     pub lines: Vec<Line>,
     /// The formula that the rows of the table share.
     pub formula: Option<Equation>,
-    /// Figures of the formula that are the same in every row, prose; may be empty.
+    /// Figures that are the same in every row or column, with the words before them, prose; may be empty.
     pub shared: String,
-    /// The table.
-    pub table: Option<Table>,
+    /// Its tables.
+    pub tables: Vec<Table>,
 }
 
 /// The chapters of a working.
@@ -72,9 +72,8 @@ fn homes(working: &Working) -> Vec<Option<Home>> {
     let mut homes = vec![None; working.steps.len()];
     for (chapter, of) in working.chapters.iter().enumerate() {
         for (block, of) in of.blocks.iter().enumerate() {
-            let (Body::Lines(indices) | Body::Table(indices)) = &of.body;
-            for index in indices {
-                if let Some(home) = homes.get_mut(*index) {
+            for index in of.body.steps() {
+                if let Some(home) = homes.get_mut(index) {
                     *home = Some((chapter, block));
                 }
             }
@@ -98,7 +97,7 @@ impl Reader<'_> {
             Chapters::Flexibility => ("flexibility", 0),
             Chapters::Case(index) => ("case", index),
             Chapters::Sums => ("sums", 0),
-            Chapters::Places(index) => ("places", index),
+            Chapters::Places => ("places", 0),
             Chapters::Checks => ("checks", 0),
         };
         let steps: Result<Vec<Step>, Fault> = chapter.blocks.iter().map(|block| self.step(block)).collect();
@@ -123,10 +122,8 @@ impl Reader<'_> {
     /// `From 1.2: L_1 = 4 m, L_2 = 5 m. From 1.4: EI_1 = 41 200 kN m².`
     fn recalled(&self, chapter: &working::Chapter) -> Result<String, Fault> {
         let mut from: Vec<Sources> = Vec::new();
-        let indices = chapter.blocks.iter().flat_map(|block| match &block.body {
-            Body::Lines(indices) | Body::Table(indices) => indices,
-        });
-        for input in indices.filter_map(|index| self.working.steps.get(*index)).flat_map(|step| &step.inputs) {
+        let indices = chapter.blocks.iter().flat_map(|block| block.body.steps());
+        for input in indices.filter_map(|index| self.working.steps.get(index)).flat_map(|step| &step.inputs) {
             let Origin::Step(index) = input.from else { continue };
             let Some(Some(home)) = self.homes.get(index) else { continue };
             let own = self.working.chapters.get(home.0).is_some_and(|other| other.number == chapter.number);
@@ -150,13 +147,21 @@ impl Reader<'_> {
         Ok(sentences.collect::<Vec<_>>().join(" "))
     }
 
+    /// The number of the paragraph of a step, where that is another one whose figures are not repeated.
+    pub fn foreign(&self, index: usize, block: &working::Block) -> Option<String> {
+        let home = self.homes.get(index).copied().flatten()?;
+        let number = self.block_number(home);
+        let same_chapter = block.number.split('.').next() == number.split('.').next();
+        (number != block.number && (same_chapter || !self.is_recalled(home.0))).then(|| number.to_owned())
+    }
+
     fn block_number(&self, (chapter, block): Home) -> &str {
         let chapter = self.working.chapters.get(chapter);
         chapter.and_then(|chapter| chapter.blocks.get(block)).map_or("", |block| block.number.as_str())
     }
 
     fn step(&self, block: &working::Block) -> Result<Step, Fault> {
-        let (Body::Lines(indices) | Body::Table(indices)) = &block.body;
+        let indices = block.body.steps();
         let steps: Vec<&working::Step> = indices.iter().filter_map(|index| self.working.steps.get(*index)).collect();
         let mut view = Step {
             number: block.number.clone(),
@@ -166,15 +171,30 @@ impl Reader<'_> {
             lines: Vec::new(),
             formula: None,
             shared: String::new(),
-            table: None,
+            tables: Vec::new(),
         };
         match (&block.body, steps.first()) {
             (Body::Table(_), Some(first)) => {
                 view.notes = block.notes.clone();
                 view.notes.extend(self.origins(block, &steps));
                 view.formula = if first.math == first.math_symbol { None } else { Some(symbols(first)?) };
-                (view.shared, view.table) = tabulated(&steps, self.labels)?;
+                let (shared, table) = tabulated(&steps, self.labels)?;
+                view.shared = said(self.labels.get("working.shared")?, &shared);
+                view.tables = table.into_iter().collect();
                 view.room = table_room(&view);
+            }
+            (Body::Grid(grid), Some(_)) => {
+                view.notes.extend(self.grid_origins(block));
+                let (shared, tables) = self.grid(grid)?;
+                view.shared = said(self.labels.get("working.shared_columns")?, &shared);
+                view.tables = tables;
+            }
+            (Body::Matrix(grid), Some(_)) => {
+                let widest = steps.iter().copied().max_by_key(|step| step.inputs.len());
+                if let Some(step) = widest {
+                    view.lines.push(line(step, "", None, true)?);
+                }
+                view.tables = self.matrix(grid);
             }
             _ => {
                 let mut basis = "";
@@ -210,10 +230,15 @@ impl Reader<'_> {
     }
 }
 
+/// Figures that rows or columns share, with the words before them; nothing where there are none.
+fn said(words: &str, figures: &str) -> String {
+    if figures.is_empty() { String::new() } else { format!("{words} {figures}") }
+}
+
 /// White that the side notes of a table need below it.
 fn table_room(step: &Step) -> f64 {
     let notes: f64 = step.notes.iter().map(|note| page::lines(note, page::NOTES, page::NOTE_PT)).sum();
     let sentence = page::lines(&step.sentence, page::COLUMN, page::TEXT_PT) * page::TEXT_LINE;
-    let rows = step.table.as_ref().map_or(0, |table| table.rows.len() + 2) as f64 * page::TABLE_LINE;
+    let rows = step.tables.iter().map(|table| table.rows.len() + 2).sum::<usize>() as f64 * page::TABLE_LINE;
     page::tenth((notes * page::NOTE_LINE - sentence - rows).max(0.0))
 }

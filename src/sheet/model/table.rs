@@ -58,6 +58,8 @@ pub struct Row {
     pub bold: bool,
     /// Whether a rule stands above it.
     pub rule: bool,
+    /// Whether its one cell goes over all columns.
+    pub span: bool,
 }
 
 /// What stands in a cell.
@@ -80,6 +82,13 @@ pub enum Cell {
         text: String,
         /// White to its right, in ems, that stands for the decimals it lacks against its neighbours.
         pad: f64,
+    },
+    /// A formula on as many lines as it needs, and a few words about it.
+    Formula {
+        /// Its lines; may be none.
+        lines: Vec<Equation>,
+        /// What it finds, prose.
+        words: String,
     },
     /// An equation.
     Equation {
@@ -122,6 +131,7 @@ impl Cell {
                 words.fold(0.0, f64::max) + pad * size_pt * MM_PER_PT
             }
             Self::Equation { equation } => equation.width(size_pt),
+            Self::Formula { .. } => 0.0,
         }
     }
 
@@ -131,6 +141,7 @@ impl Cell {
             Self::Text { text } | Self::Prose { text } => text_width(text, Face::Regular, size_pt),
             Self::Figure { text, pad } => text_width(text, Face::Regular, size_pt) + pad * size_pt * MM_PER_PT,
             Self::Equation { equation } => equation.width(size_pt),
+            Self::Formula { .. } => 0.0,
         }
     }
 }
@@ -177,7 +188,7 @@ impl Column {
 impl Row {
     /// A plain row.
     pub fn of(cells: Vec<Cell>) -> Self {
-        Self { cells, bold: false, rule: false }
+        Self { cells, bold: false, rule: false, span: false }
     }
 }
 
@@ -224,7 +235,7 @@ impl Table {
         let column = self.columns.get(index);
         let head = column.map_or(0.0, |column| column.head.longest(false, page::TABLE_PT));
         let unit = column.map_or(0.0, |column| text_width(&column.unit, Face::Regular, 8.0));
-        let cells = self.rows.iter().filter_map(|row| Some(row.cells.get(index)?.longest(row.bold, page::TABLE_PT)));
+        let cells = self.rows.iter().filter(|row| !row.span).filter_map(|row| Some(row.cells.get(index)?.longest(row.bold, page::TABLE_PT)));
         cells.fold(head.max(unit), f64::max) + 2.6
     }
 

@@ -338,21 +338,34 @@ impl Narrator<'_> {
         Some(Act { action, first, a: Traced::zero(), b: length.clone(), c: length, whole: false, ..act.clone() })
     }
 
-    /// A difference of two distances as a step.
+    /// A difference of two distances as a step, once a place.
     pub fn length_beyond(&mut self, far: &Traced, near: &Traced, value: f64) -> Traced {
         let unit = self.builder.base.coherent(0, 1);
-        let count = self.builder.drafts.len();
+        let expression = far.clone() - near.clone();
+        let sources = expression.sources();
+        let number = match self.book.difference(&sources) {
+            Ok(known) => return known,
+            Err(number) => number,
+        };
         let what =
-            finding("difference of distances", Symbol::new("d", format!("x{count}")), (What::Other, unit), value);
-        self.builder.find(what, far.clone() - near.clone())
+            finding("difference of distances", Symbol::new("d", format!("x{number}")), (What::Other, unit), value);
+        let step = self.builder.find(what, expression);
+        self.book.keep_difference(sources, step.clone());
+        step
     }
 
     fn clipped(&mut self, act: &Act, along: &Traced, value: f64) -> Traced {
         let unit = self.builder.base.coherent(1, -1);
-        let count = self.builder.drafts.len();
-        let what = finding("intensity there", Symbol::new("w", format!("x{count}")), (What::Other, unit), value);
         let expression = sums::intensity_at(act.first.clone(), act.second.clone(), act.c.clone(), along.clone());
-        self.builder.find(what, expression)
+        let sources = expression.sources();
+        let number = match self.book.difference(&sources) {
+            Ok(known) => return known,
+            Err(number) => number,
+        };
+        let what = finding("intensity there", Symbol::new("w", format!("x{number}")), (What::Other, unit), value);
+        let step = self.builder.find(what, expression);
+        self.book.keep_difference(sources, step.clone());
+        step
     }
 
     /// A quantity that runs linearly along a tapered segment, at a place of a piece.

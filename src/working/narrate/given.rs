@@ -9,7 +9,7 @@ use crate::analysis::equilibrium as sums;
 use crate::analysis::stiffness::{rigidity, shear};
 use crate::member::{Hold, LoadKind, Member, Place, Section, Weight};
 use crate::quantity::{GRAVITY, Typed};
-use crate::working::draft::{Slot, Symbol};
+use crate::working::draft::{Likes, Slot, Symbol};
 use crate::working::step::Chapters;
 use crate::working::trace::Traced;
 use crate::working::units::What;
@@ -35,7 +35,10 @@ pub struct Book {
     pub constants: BTreeMap<Symbol, Traced>,
     /// Loads of the combination whose places are being worked out, by piece.
     pub combined: Vec<Vec<super::acts::Act>>,
-    worked: usize,
+    differences: Vec<(Vec<crate::working::trace::Source>, Traced)>,
+    gravity: Option<Traced>,
+    /// Whether combinations are being summed.
+    pub combining: bool,
     places: BTreeMap<Place, Traced>,
     distances: BTreeMap<(Place, Place), Traced>,
     /// Where places and distances are written.
@@ -71,10 +74,20 @@ pub enum LoadBook {
 }
 
 impl Book {
-    /// A subscript for the next place that is worked out.
-    pub fn next_place(&mut self) -> String {
-        self.worked += 1;
-        self.worked.to_string()
+    /// Forgets the differences of distances written for one place: the next has its own.
+    pub fn leave_place(&mut self) {
+        self.differences.clear();
+    }
+
+    /// The difference of distances that has been written from these sources, or the number of a new one.
+    pub fn difference(&self, sources: &[crate::working::trace::Source]) -> Result<Traced, usize> {
+        let known = self.differences.iter().find(|(known, _)| known == sources);
+        known.map(|(_, step)| step.clone()).ok_or(self.differences.len() + 1)
+    }
+
+    /// Keeps a difference for the rest of the place.
+    pub fn keep_difference(&mut self, sources: Vec<crate::working::trace::Source>, step: Traced) {
+        self.differences.push((sources, step));
     }
 }
 
@@ -88,7 +101,14 @@ impl Narrator<'_> {
         self.builder.block("Lengths of the segments.");
         self.segments();
         self.book.geometry = self.builder.block("Places and distances along the member, from its left end.");
-        self.builder.block("Rigidity of each section.");
+        if has(self.member, |kind| matches!(kind, LoadKind::SelfWeight)) {
+            self.builder.block("Gravity.");
+            if self.member.sections.iter().any(|section| {
+                matches!(section.weight, Some(Weight::MassPerLength(_) | Weight::Mass(..)))
+            }) {
+                self.gravity();
+            }
+        }
         self.sections();
         self.builder.block("Springs of the supports.");
         self.springs();
@@ -186,6 +206,14 @@ impl Narrator<'_> {
             .collect();
         for (section, used) in self.member.sections.iter().zip(used) {
             let book = if used {
+                let sentence = "Rigidity of each section, and its weight where it acts.".to_owned();
+                let likes = Likes {
+                    key: "sections".to_owned(),
+                    head: (section.name.clone(), String::new()),
+                    fewest: 2,
+                    sentence: sentence.clone(),
+                };
+                self.builder.block_like(sentence, likes);
                 self.section(section, weighed, warmed)
             } else {
                 SectionBook { ei: Traced::zero(), ga: None, weight: None, depth: None, expansion: None }
@@ -311,6 +339,9 @@ impl Narrator<'_> {
 
     /// Standard gravity, and its conversion where the working's force is not the kilonewton.
     fn gravity(&mut self) -> Traced {
+        if let Some(known) = &self.book.gravity {
+            return known.clone();
+        }
         let newton = Typed { terms: vec![crate::quantity::Term { figure: GRAVITY, unit: newton_per_kilogram() }] };
         let to = self.builder.base.gravity();
         let value = GRAVITY.to_f64();
@@ -320,7 +351,9 @@ impl Narrator<'_> {
             self.builder.choose("standard gravity", Symbol::new("g", "n"), term.figure, term.unit.clone(), value);
         let factor = self.builder.factor(&term.unit, &to);
         let what = finding("standard gravity in working units", Symbol::new("g", "w"), (What::Other, to), value);
-        self.builder.find(what, standard * factor)
+        let gravity = self.builder.find(what, standard * factor);
+        self.book.gravity = Some(gravity.clone());
+        gravity
     }
 
     fn springs(&mut self) {

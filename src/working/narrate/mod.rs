@@ -3,7 +3,9 @@
 mod acts;
 mod cases;
 mod checks;
+mod factored;
 mod given;
+mod place;
 mod places;
 mod state;
 mod sums;

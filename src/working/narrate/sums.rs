@@ -7,7 +7,7 @@ use super::{Narrator, Scale, finding};
 use crate::analysis::equilibrium as sums;
 use crate::analysis::{Cut, Solution, Sway};
 use crate::member::Redundant;
-use crate::working::draft::Symbol;
+use crate::working::draft::{Builder, Set, Symbol};
 use crate::working::step::Chapters;
 use crate::working::trace::{Source, Traced};
 
@@ -89,15 +89,15 @@ impl Narrator<'_> {
     /// Every combination: factors times cases.
     pub fn sums(&mut self, cases: &[Totals]) -> Vec<Totals> {
         self.builder.chapter(Chapters::Sums, "Combinations: factors times load cases");
+        self.builder.block("Every figure of a combination is the sum of the load cases' figures times their factors.");
+        let heads = self.member.combinations.iter().map(|c| (c.name.clone(), String::new())).collect();
+        let mut grid = Cells::default();
+        self.book.combining = true;
         let mut list = Vec::new();
         for (index, combination) in self.member.combinations.iter().enumerate() {
             let Some(solution) = self.analysis.combinations.get(index).cloned() else { continue };
             let factors = self.book.factors.get(index).cloned().unwrap_or_default();
             self.builder.tag(combination.name.clone());
-            self.builder.block(format!(
-                "Combination {}: reactions, redundants, inner forces and movements at the cuts.",
-                combination.name
-            ));
             let weigh = |of: &dyn Fn(&Totals) -> Traced| -> Terms {
                 factors.iter().cloned().zip(cases).map(|(factor, case)| (factor, of(case))).collect()
             };
@@ -140,6 +140,11 @@ impl Narrator<'_> {
                 },
             );
             list.push(totals);
+            grid.fill(&self.builder, index);
+        }
+        self.book.combining = false;
+        if let Some(block) = self.builder.open_block() {
+            block.set = Set::Matrix(heads, grid.cells);
         }
         self.builder.tag("");
         list
@@ -275,11 +280,43 @@ impl Narrator<'_> {
             return known.clone();
         }
         let bare = products.len() == 1 && products.first().is_some_and(|only| only.source().is_some());
-        let sum = self.total(what, products, always && !bare);
+        let stated = always && !bare;
+        // The terms of a combination stand in the columns of its matrix, however many they are.
+        let sum = match (self.book.combining, stated) {
+            (true, true) => self.builder.state(what, Some(sums::sum(products))),
+            (true, false) => self.builder.find(what, sums::sum(products)),
+            (false, _) => self.total(what, products, stated),
+        };
         if !key.is_empty() {
             written.insert((kind, key), sum.clone());
         }
         sum
+    }
+}
+
+/// Where the steps of a matrix stand: rows by symbol, a column for each combination.
+#[derive(Debug, Default)]
+struct Cells {
+    rows: Vec<(Symbol, usize)>,
+    cells: Vec<(usize, usize)>,
+}
+
+impl Cells {
+    /// Gives the steps written since the last call the rows of their symbols.
+    fn fill(&mut self, builder: &Builder, column: usize) {
+        let steps = builder.open_steps();
+        let mut seen: Vec<Symbol> = Vec::new();
+        for step in steps.iter().skip(self.cells.len()) {
+            let Some(draft) = builder.drafts.get(*step) else { continue };
+            let count = seen.iter().filter(|known| **known == draft.symbol).count();
+            seen.push(draft.symbol.clone());
+            let key = (draft.symbol.clone(), count);
+            let row = self.rows.iter().position(|known| *known == key).unwrap_or_else(|| {
+                self.rows.push(key);
+                self.rows.len() - 1
+            });
+            self.cells.push((row, column));
+        }
     }
 }
 
