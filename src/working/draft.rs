@@ -95,6 +95,8 @@ pub enum Set {
     /// Lines, or a table where all have one shape.
     #[default]
     Apart,
+    /// Rows of numbers put in, where one sentence says how all of them are made.
+    Rows,
     /// A grid: column by column, each of as many steps as there are rows.
     Grid(Vec<(String, String)>),
     /// Weighted sums: row by row, each step's column.

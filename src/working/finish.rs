@@ -126,6 +126,7 @@ impl Builder {
                 }
                 let body = match &block.set {
                     Set::Apart => self.body(&block.steps, indices),
+                    Set::Rows => Body::Rows(indices),
                     Set::Grid(heads) => Body::Grid(grid(heads, indices.len(), |rows, row, column| {
                         indices.get(column * rows + row).copied()
                     })),
@@ -201,7 +202,7 @@ impl Set {
     /// How a step of a block is numbered: `3`, or in a grid by row and column, `3b`.
     fn line(&self, index: usize, steps: usize) -> String {
         match self {
-            Self::Apart => (index + 1).to_string(),
+            Self::Apart | Self::Rows => (index + 1).to_string(),
             Self::Grid(heads) => {
                 let rows = (steps / heads.len().max(1)).max(1);
                 format!("{}{}", index % rows + 1, letter(index / rows))

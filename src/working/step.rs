@@ -68,6 +68,8 @@ pub enum Body {
     Lines(Vec<usize>),
     /// Steps that share one expression: the formula once, then a row each. Indices into [`Working::steps`].
     Table(Vec<usize>),
+    /// Steps of one making that the sentence tells: symbol, numbers put in, result. Indices into [`Working::steps`].
+    Rows(Vec<usize>),
     /// The same derivation for several places, spans or combinations: a row for each line, a column for each of them.
     Grid(Grid),
     /// Weighted sums: a row for each quantity, a column for each combination.
@@ -87,7 +89,7 @@ impl Body {
     /// Every step, in the order of the working.
     pub fn steps(&self) -> Vec<usize> {
         match self {
-            Self::Lines(steps) | Self::Table(steps) => steps.clone(),
+            Self::Lines(steps) | Self::Table(steps) | Self::Rows(steps) => steps.clone(),
             Self::Grid(grid) | Self::Matrix(grid) => {
                 let mut steps: Vec<usize> = grid.rows.iter().flatten().filter_map(|step| *step).collect();
                 steps.sort_unstable();

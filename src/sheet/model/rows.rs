@@ -1,6 +1,6 @@
 //! Steps of one shape as the rows of a table.
 
-use super::table::{Cell, Column, Row, Table, aligned};
+use super::table::{Align, Cell, Column, Row, Table, aligned};
 use crate::sheet::equation::linear;
 use crate::sheet::template::Labels;
 use crate::sheet::{Fault, page, typeset};
@@ -41,6 +41,30 @@ pub fn tabulated(steps: &[&working::Step], labels: &Labels) -> Result<(String, O
     }
     table.spread();
     Ok((shared.join(", "), Some(table)))
+}
+
+/// Steps whose making the sentence tells: number, symbol, numbers put in, result with its unit.
+pub fn listed(steps: &[&working::Step], labels: &Labels) -> Result<Table, Fault> {
+    let results: Vec<Cell> =
+        steps.iter().map(|step| Cell::quantity(step.result.printed, &step.result.unit)).collect();
+    let end = results.iter().map(|cell| cell.width(page::TABLE_PT)).fold(18.0, f64::max) + page::GAP;
+    let columns = vec![
+        Column::text("").wide(7.0),
+        Column::text("").wide(15.0),
+        Column::text(labels.get("working.numbers")?),
+        Column { align: Align::Right, ..Column::text(labels.get("working.result")?).wide(end) },
+    ];
+    let mut table = Table::new("", labels.get("working.listed")?, columns);
+    for (index, (step, result)) in steps.iter().zip(results).enumerate() {
+        let cells = vec![
+            Cell::text((index + 1).to_string()),
+            Cell::prose(step.symbol.clone()),
+            Cell::figures(linear(&step.numbers)?),
+            result,
+        ];
+        table.rows.push(Row { bold: step.bold, ..Row::of(cells) });
+    }
+    Ok(table)
 }
 
 /// Inputs by column.

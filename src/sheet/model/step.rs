@@ -3,7 +3,7 @@
 use serde::Serialize;
 
 use super::line::{Line, line, symbols};
-use super::rows::tabulated;
+use super::rows::{listed, tabulated};
 use super::{Equation, Figure, Table};
 use crate::sheet::page;
 use crate::sheet::template::Labels;
@@ -183,6 +183,7 @@ impl Reader<'_> {
                 view.tables = table.into_iter().collect();
                 view.room = table_room(&view);
             }
+            (Body::Rows(_), Some(_)) => view.tables.push(listed(&steps, self.labels)?),
             (Body::Grid(grid), Some(_)) => {
                 view.notes.extend(self.grid_origins(block));
                 let (shared, tables) = self.grid(grid)?;

@@ -7,7 +7,7 @@ use crate::analysis::equilibrium as sums;
 use crate::analysis::stability::splits;
 use crate::member::{LoadKind, Redundant};
 use crate::quantity::{Decimal, Unit};
-use crate::working::draft::Symbol;
+use crate::working::draft::{Set, Symbol};
 use crate::working::narrate::given::LoadBook;
 use crate::working::step::Chapters;
 use crate::working::trace::Traced;
@@ -221,7 +221,12 @@ impl Narrator<'_> {
         let released = self.tell(&solution.released, &loads, &scale);
         self.builder.tag(load_case.name.clone());
         let redundants = self.compatibility(case, &released, &imposed, flexibility);
+        self.book.combining = !redundants.is_empty();
         let totals = self.superpose(case, &released, units, &redundants);
+        self.book.combining = false;
+        if let Some(block) = self.builder.open_block().filter(|_| !redundants.is_empty()) {
+            block.set = Set::Rows;
+        }
         self.builder.tag("");
         totals
     }
@@ -288,7 +293,7 @@ impl Narrator<'_> {
         }
         let solved = self.solve(&redundants, &gaps, flexibility, &solution.redundants, &solution.reduced);
         self.builder.block(
-            "Reactions and inner forces of the member: released member plus redundants times their unit states.",
+            "The member itself: each figure is that of the released member plus each redundant times its unit state.",
         );
         solved
     }

@@ -8,11 +8,14 @@ use crate::analysis::own::Sway;
 use crate::analysis::stability::splits;
 use crate::analysis::state::State;
 use crate::member::{Place, Redundant};
-use crate::working::draft::Symbol;
+use crate::working::draft::{Likes, Symbol};
 use crate::working::trace::Traced;
 
 /// A pair of figures: shear and moment, or deflection and turn, or force and moment.
 pub type Pair = (Traced, Traced);
+
+const CUTS: &str = "Free bodies, right to left: shear and bending moment at every cut.";
+const CHAIN: &str = "Pieces chained, left to right: own bending of each piece, then shift of its wall, turn times length, own bending.";
 
 fn nothing() -> Pair {
     (Traced::zero(), Traced::zero())
@@ -78,11 +81,11 @@ impl<'a> Narrator<'a> {
         for part in &order {
             teller.balance(*part);
         }
-        teller.narrator.builder.block("Free bodies, right to left: shear and bending moment at every cut.");
+        teller.narrator.builder.block(CUTS);
         for part in 0..parts {
             teller.cut(part);
         }
-        teller.narrator.builder.block("Pieces chained, left to right: own bending of each piece, then shift of its wall, turn times length, own bending.");
+        teller.narrator.builder.block(CHAIN);
         for part in order.iter().rev() {
             teller.chain(*part);
         }
@@ -271,6 +274,7 @@ impl Teller<'_, '_, '_> {
         for piece in (part.first..part.last).rev() {
             let Some(geometry) = self.piece(piece) else { return };
             let found = self.state.pieces.get(piece);
+            self.column(CUTS, &geometry, "cut");
             while let Some(support) = supports.pop_if(|support| {
                 self.narrator.analysis.model.supports.get(*support).is_some_and(|held| held.cut > piece)
             }) {
@@ -300,6 +304,18 @@ impl Teller<'_, '_, '_> {
                 *slot = cut.clone();
             }
         }
+    }
+
+    /// A block for one piece, which stands as a column beside others where their derivations are alike.
+    fn column(&mut self, sentence: &str, piece: &Piece, what: &str) {
+        let (from, to) = (self.narrator.place_name(piece.from), self.narrator.place_name(piece.to));
+        let likes = Likes {
+            key: what.to_owned(),
+            head: (format!("{from}–{to}"), String::new()),
+            fewest: 3,
+            sentence: format!("{sentence} Symbols are those of the first column."),
+        };
+        self.narrator.builder.block_like(sentence, likes);
     }
 
     fn sway_findings(&self, sway: Sway, title: &str, letters: [&'static str; 2], sub: &str) -> [super::Finding; 2] {
@@ -340,6 +356,7 @@ impl Teller<'_, '_, '_> {
         let mut carried = nothing();
         for piece in part.first..part.last {
             let Some(geometry) = self.piece(piece) else { return };
+            self.column(CHAIN, &geometry, "chain");
             let (own_v, own_psi) = self.own(piece, &geometry);
             let before = carried.clone();
             let state = self.state.pieces.get(piece);
@@ -358,6 +375,9 @@ impl Teller<'_, '_, '_> {
             if let Some(slot) = self.carried.get_mut(piece) {
                 *slot = (before, carried.clone());
             }
+        }
+        if !walled {
+            self.narrator.builder.block(CHAIN);
         }
         let start = if walled { nothing() } else { self.start(index, &part) };
         self.place_pieces(&part, &start);

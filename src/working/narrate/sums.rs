@@ -63,6 +63,7 @@ impl Narrator<'_> {
         self.write_totals(
             &solution,
             redundants.to_vec(),
+            Vec::new(),
             &|support, moment| match owned.get(support) {
                 Some((Some(x), _)) if !moment => vec![(one.clone(), x.clone())],
                 Some((_, Some(x))) if moment => vec![(one.clone(), x.clone())],
@@ -101,7 +102,7 @@ impl Narrator<'_> {
             let weigh = |of: &dyn Fn(&Totals) -> Traced| -> Terms {
                 factors.iter().cloned().zip(cases).map(|(factor, case)| (factor, of(case))).collect()
             };
-            let mut redundants = Vec::new();
+            let (mut redundants, mut keys) = (Vec::new(), Vec::new());
             for (place, redundant) in self.analysis.model.redundants.clone().into_iter().enumerate() {
                 let value = solution.redundants.get(place).copied().unwrap_or_default();
                 let scale = self.plain();
@@ -114,11 +115,14 @@ impl Narrator<'_> {
                 )
                 .last();
                 let terms = weigh(&|case| case.redundants.get(place).cloned().unwrap_or_else(Traced::zero));
+                // A redundant that is a support's own force or moment is its reaction: summed once.
+                keys.push((0, terms.iter().flat_map(|(_, term)| term.sources()).collect()));
                 redundants.push(self.builder.state(what, Some(sums::weighted(terms))));
             }
             let totals = self.write_totals(
                 &solution,
                 redundants,
+                keys,
                 &|support, moment| {
                     weigh(&|case| {
                         let pair =
@@ -154,11 +158,15 @@ impl Narrator<'_> {
         &mut self,
         solution: &Solution,
         redundants: Vec<Traced>,
+        keys: Vec<(u8, Vec<Source>)>,
         reaction: &dyn Fn(usize, bool) -> Terms,
         cut: &dyn Fn(Row, usize, bool) -> Terms,
     ) -> Totals {
         let scale = self.plain();
         let mut written = Written::new();
+        for (redundant, (kind, key)) in redundants.iter().zip(keys) {
+            written.insert((kind, key), redundant.clone());
+        }
         let mut totals = Totals { redundants, ..Totals::default() };
         for (index, support) in self.member.supports.iter().enumerate() {
             let value = solution.reactions.get(index).copied().unwrap_or_default();
@@ -273,9 +281,10 @@ impl Narrator<'_> {
         written: &mut Written,
         always: bool,
     ) -> Traced {
+        // Two figures are the same sum where their terms are the same, whatever the factors.
+        let key: Vec<Source> = terms.iter().flat_map(|(_, term)| term.sources()).collect();
         let products: Vec<Traced> =
             terms.into_iter().map(|(factor, term)| factor * term).filter(|term| !term.is_zero()).collect();
-        let key: Vec<Source> = products.iter().flat_map(Traced::sources).collect();
         if let Some(known) = written.get(&(kind, key.clone())) {
             return known.clone();
         }

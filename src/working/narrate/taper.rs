@@ -10,7 +10,7 @@ use crate::analysis::own::{Cut, Station, stations};
 use crate::analysis::stiffness::{Stiffness, Tapered, cubic_rigidity};
 use crate::member::TaperLaw;
 use crate::quantity::Unit;
-use crate::working::draft::Symbol;
+use crate::working::draft::{Likes, Symbol};
 use crate::working::trace::Traced;
 use crate::working::units::What;
 
@@ -36,8 +36,14 @@ impl Narrator<'_> {
         let samples = stations(&tapered, x, value, &actions);
         let (mut turns, mut shifts) = (Vec::new(), Vec::new());
         let mut ends: Vec<(f64, Traced)> = vec![(0.0, Traced::zero()), (x, l.clone())];
+        // In a place of interest the samples stay rows of its column.
+        let outer = self.builder.open_block().filter(|block| block.likes.as_ref().is_none_or(|l| l.fewest > 2));
+        let sentence = outer.map(|block| block.sentence.clone());
         for (index, sample) in samples.iter().enumerate() {
             let place = index + 1;
+            if let Some(sentence) = &sentence {
+                self.sample_block(sentence, piece, place);
+            }
             let length = self.panel(sample, acts, &mut ends);
             let at = self.sample_place(sample, place, &length, &ends);
             let arm = self.step(
@@ -74,11 +80,30 @@ impl Narrator<'_> {
                 shifts.push(weight * shear / ga);
             }
         }
+        if let Some(sentence) = sentence {
+            self.builder.block(sentence);
+        }
         let [v, psi] = found;
         let basis = "weighted sum over the samples (Gauss-Legendre)";
         let v = self.builder.find(v.basis(basis), sums::sum(shifts));
         let psi = self.builder.find(psi.basis(basis), sums::sum(turns));
         (v, psi)
+    }
+
+    fn sample_block(&mut self, sentence: &str, piece: &Piece, place: usize) {
+        let (from, to) = (self.place_name(piece.from), self.place_name(piece.to));
+        self.book.leave_place();
+        self.builder.block_like(
+            sentence,
+            Likes {
+                key: format!("samples {from} {to}"),
+                head: (place.to_string(), String::new()),
+                fewest: 2,
+                sentence: format!(
+                    "Samples of the tapered piece {from}–{to} (Gauss-Legendre): bending at each, and its weight. Symbols are those of the first column."
+                ),
+            },
+        );
     }
 
     /// Unit of the turn per length, given the units of the state: that of the turn, per length.
