@@ -8,7 +8,7 @@ use super::primitive::{Anchor, Dash, Fill, Point, Run, at};
 use super::rows::{Layer, Note, annotate, spread};
 
 /// Height of a panel's values, mm.
-const TALL: f64 = 24.0;
+const TALL: f64 = 20.0;
 /// How far labels may stand outside the values, mm.
 const OUTSIDE: f64 = 9.0;
 /// Distance of line names, mm.

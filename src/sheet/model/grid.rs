@@ -7,9 +7,13 @@ use crate::sheet::{Fault, page, typeset};
 use crate::working::{self, Grid, Origin, column_letter};
 
 /// Width of the row's number, its symbol and its unit, mm.
-const LABELS: [f64; 3] = [7.0, 15.0, 15.0];
+const LABELS: [f64; 3] = [5.0, 13.0, 11.0];
 /// Narrowest column of figures, mm.
-const NARROWEST: f64 = 13.0;
+const NARROWEST: f64 = 11.0;
+/// Size of the figures, pt.
+const SMALL_PT: f64 = 8.0;
+/// White between figures, mm.
+const GAP: f64 = 1.6;
 
 /// A row of a grid: what it is called, and its figures.
 struct Line {
@@ -106,6 +110,7 @@ impl Reader<'_> {
             });
         }
         let mut table = Table::new("", self.labels.get("working.columns")?, columns);
+        table.small = true;
         let first = part.start == 0;
         for (above, line) in lines {
             if let Some(above) = above.as_ref().filter(|_| first) {
@@ -144,6 +149,7 @@ impl Reader<'_> {
                 });
             }
             let mut table = Table::new("", self.labels.get("working.sums").unwrap_or_default(), columns);
+            table.small = true;
             for (index, line) in lines.iter().enumerate() {
                 let combinations = part.end > cases.len();
                 if index >= factors || combinations {
@@ -261,7 +267,7 @@ fn step_of(input: &working::Input) -> Option<usize> {
 /// How the columns are shared out among tables, each as wide as the text column allows.
 fn chunks(lines: &[&Line], columns: usize, labels: [f64; 3]) -> Vec<std::ops::Range<usize>> {
     let widest = lines.iter().flat_map(|line| &line.figures).map(|figure| {
-        Cell::figures(figure.clone()).width(page::TABLE_PT) + page::GAP
+        Cell::figures(figure.clone()).width(SMALL_PT) + GAP
     });
     let each = widest.fold(NARROWEST, f64::max);
     let room = page::COLUMN - labels.iter().sum::<f64>();

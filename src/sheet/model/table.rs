@@ -18,6 +18,8 @@ pub struct Table {
     pub alt: String,
     /// Whether cells stand at the middle of their row, for rows of equations, rather than at its top.
     pub middle: bool,
+    /// Whether it is set small, where it has many columns.
+    pub small: bool,
     /// Columns, left to right.
     pub columns: Vec<Column>,
     /// Rows.
@@ -195,7 +197,7 @@ impl Row {
 impl Table {
     /// A table without rows yet.
     pub fn new(title: impl Into<String>, alt: impl Into<String>, columns: Vec<Column>) -> Self {
-        Self { title: title.into(), alt: alt.into(), middle: false, columns, rows: Vec::new() }
+        Self { title: title.into(), alt: alt.into(), middle: false, small: false, columns, rows: Vec::new() }
     }
 
     /// Widens columns whose longest word does not fit, at the cost of those that have width to spare.
@@ -233,10 +235,11 @@ impl Table {
     /// Width of a column's longest word with the white around it.
     fn need(&self, index: usize) -> f64 {
         let column = self.columns.get(index);
-        let head = column.map_or(0.0, |column| column.head.longest(false, page::TABLE_PT));
+        let (size, white) = if self.small { (8.0, 1.4) } else { (page::TABLE_PT, 2.6) };
+        let head = column.map_or(0.0, |column| column.head.longest(false, size));
         let unit = column.map_or(0.0, |column| text_width(&column.unit, Face::Regular, 8.0));
-        let cells = self.rows.iter().filter(|row| !row.span).filter_map(|row| Some(row.cells.get(index)?.longest(row.bold, page::TABLE_PT)));
-        cells.fold(head.max(unit), f64::max) + 2.6
+        let cells = self.rows.iter().filter(|row| !row.span).filter_map(|row| Some(row.cells.get(index)?.longest(row.bold, size)));
+        cells.fold(head.max(unit), f64::max) + white
     }
 
     /// Gives the width that is left to the columns alike, where all of them have a width of their own.

@@ -1,10 +1,11 @@
 //! An issued sheet: everything a calculation knows, put on paper.
 
-use crate::analysis::Field;
+mod plots;
+
 use crate::calculation::{Calculation, both_routes};
-use crate::figure::{Curve, Cut, Mark, Panel, Plot, Style, Words};
+use crate::figure::{Cut, Words};
 use crate::member::{Member, Purpose};
-use crate::quantity::{Decimal, Unit};
+use crate::quantity::Decimal;
 use crate::sheet::model::{Cell, Column, Findings, Parts, Row, Table};
 use crate::sheet::{self, Attachments, Model, Options, Printed, typeset};
 use crate::verdict::{Check, rounded_up};
@@ -80,7 +81,7 @@ fn findings(calculation: &Calculation, working: &Working, file: &str) -> Finding
         findings: failures(calculation),
         checks: checks(calculation, working),
         reactions: reactions(calculation, working),
-        plots: plots(calculation, working),
+        plots: plots::plots(calculation, working),
         crosschecks: crosschecks(calculation),
         cases: Some(cases(working)),
         sources: SOURCES.iter().map(|source| (*source).to_owned()).collect(),
@@ -259,82 +260,4 @@ fn cases(working: &Working) -> Table {
         }
     }
     table
-}
-
-/// Shear, moment and deflection of each combination, and of all of them.
-fn plots(calculation: &Calculation, working: &Working) -> Vec<(String, Plot)> {
-    let member = &calculation.member;
-    let each = member.combinations.iter().enumerate().filter_map(|(index, combination)| {
-        let field = Field::of_combination(&calculation.analysis, member, index)?;
-        let panels = (0..3).map(|which| panel(calculation, working, &field, &combination.name, which)).collect();
-        Some((
-            format!("Combination {}", combination.name),
-            plot(member, format!("Combination {}", combination.name), panels),
-        ))
-    });
-    each.collect()
-}
-
-fn plot(member: &Member, subject: String, panels: Vec<Panel>) -> Plot {
-    let supports = member.supports.iter().map(|support| (support.at.x(), support.name.clone())).collect();
-    Plot { subject, from: 0.0, to: member.end().x(), supports, panels }
-}
-
-fn panel(calculation: &Calculation, working: &Working, field: &Field<'_>, tag: &str, which: usize) -> Panel {
-    let unit = |symbols: [&str; 3]| {
-        symbols.get(which).and_then(|symbol| Unit::known(symbol)).map(|atom| Unit::of([(atom, 1)]))
-    };
-    let us = calculation.member.title.system == crate::member::System::Us;
-    let force = if us { ["kip", "kip", "in"] } else { ["kN", "kN", "mm"] };
-    let length = Unit::known(if us { "ft" } else { "m" });
-    let shown = match which {
-        1 => unit(force).map(|unit| Unit::of(unit.factors().iter().copied().chain(length.map(|atom| (atom, 1))))),
-        _ => unit(force),
-    }
-    .unwrap_or_default();
-    let scale = shown.si().unwrap_or(1.0);
-    let mut points = Vec::new();
-    for (index, piece) in calculation.analysis.model.pieces.iter().enumerate() {
-        let count = 40;
-        for step in 0..=count {
-            let x = piece.length * f64::from(step) / f64::from(count);
-            let values = field.inside(index, x);
-            let pair = match which {
-                0 => [values.left.shear, values.right.shear],
-                1 => [values.left.moment, values.right.moment],
-                _ => [values.v, values.v],
-            };
-            points.extend(pair.map(|y| (piece.x + x, y / scale)));
-        }
-    }
-    let extremes = field.extremes();
-    let range = [extremes.shear, extremes.moment, extremes.deflection].get(which).copied().unwrap_or_default();
-    let mut marks = Vec::new();
-    for extreme in [range.max, range.min] {
-        let symbol_base = ["V", "M", "v"].get(which).copied().unwrap_or("V");
-        let close = |step: &&Step| {
-            step.case.as_deref() == Some(tag)
-                && step.symbol.starts_with(symbol_base)
-                && (step.result.value - extreme.value).abs() <= 1e-9 * extreme.value.abs()
-        };
-        let Some(step) = working.steps.iter().rev().find(close) else { continue };
-        if extreme.value == 0.0 {
-            continue;
-        }
-        let figure = Decimal::nearest(step.result.printed.to_f64() * step.result.unit.si().unwrap_or(1.0) / scale, 4);
-        let mark = Mark { x: extreme.at, y: extreme.value / scale, label: typeset::figure(figure) };
-        if !marks.iter().any(|known: &Mark| (known.x - mark.x).abs() < 1e-9 && known.label == mark.label) {
-            marks.push(mark);
-        }
-    }
-    let note = if which == 1 { "sagging below the axis" } else { "" };
-    let symbol = ["V", "M", "v"].get(which).copied().unwrap_or("V");
-    Panel {
-        symbol: symbol.to_owned(),
-        unit: typeset::unit(&shown),
-        note: note.to_owned(),
-        down: which > 0,
-        curves: vec![Curve { label: String::new(), style: Style::Line(0), points, marks }],
-        ..Panel::default()
-    }
 }
