@@ -1,7 +1,7 @@
 //! Diagrams: shear, moment and deflection of each combination, and the envelope over all of them.
 
-use crate::analysis::extreme::{Extreme, Range};
 use crate::analysis::Field;
+use crate::analysis::extreme::{Extreme, Range};
 use crate::calculation::Calculation;
 use crate::figure::{Chord, Curve, Mark, Panel, Plot, Style};
 use crate::member::{Measured, Member, System};

@@ -205,12 +205,7 @@ impl Builder {
     pub fn block(&mut self, sentence: impl Into<String>) -> Slot {
         let chapter = self.chapters.len().saturating_sub(1);
         if let Some(open) = self.chapters.last_mut() {
-            open.blocks.push(DraftBlock {
-                sentence: sentence.into(),
-                steps: Vec::new(),
-                likes: None,
-                set: Set::Apart,
-            });
+            open.blocks.push(DraftBlock { sentence: sentence.into(), steps: Vec::new(), likes: None, set: Set::Apart });
             self.slot = (chapter, open.blocks.len() - 1);
         }
         self.slot

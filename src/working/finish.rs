@@ -224,11 +224,7 @@ pub fn letter(index: usize) -> String {
     }
 }
 
-fn grid(
-    heads: &[(String, String)],
-    steps: usize,
-    at: impl Fn(usize, usize, usize) -> Option<usize>,
-) -> Grid {
+fn grid(heads: &[(String, String)], steps: usize, at: impl Fn(usize, usize, usize) -> Option<usize>) -> Grid {
     let rows = steps / heads.len().max(1);
     let row = |row| (0..heads.len()).map(|column| at(rows, row, column)).collect();
     Grid { heads: heads.to_vec(), rows: (0..rows).map(row).collect() }

@@ -109,8 +109,7 @@ impl Model {
     /// Every table of the sheet.
     fn tables(&mut self) -> impl Iterator<Item = &mut Table> {
         let given = self.given.limits.iter_mut().chain(&mut self.given.inputs).chain([&mut self.given.combinations]);
-        let steps =
-            self.chapters.iter_mut().flat_map(|chapter| &mut chapter.steps).flat_map(|step| &mut step.tables);
+        let steps = self.chapters.iter_mut().flat_map(|chapter| &mut chapter.steps).flat_map(|step| &mut step.tables);
         let sums = self.sums.tables.iter_mut().chain(&mut self.sums.reactions);
         let trust = self.trust.crosschecks.iter_mut().chain(&mut self.trust.revisions).chain(&mut self.trust.hashes);
         given.chain(&mut self.method.cases).chain(steps).chain(sums).chain(&mut self.checks.table).chain(trust)

@@ -57,10 +57,8 @@ impl Reader<'_> {
                 }
                 let figures = inputs.iter().map(|input| typeset::figure(input.printed)).collect();
                 let unit = typeset::unit(&head.unit);
-                lines.push((
-                    None,
-                    Line { number: String::new(), label: head.name.clone(), unit, figures, bold: false },
-                ));
+                lines
+                    .push((None, Line { number: String::new(), label: head.name.clone(), unit, figures, bold: false }));
                 shown.push(from);
             }
             let plain = first.math.is_empty() || first.math == first.math_symbol;
@@ -72,7 +70,10 @@ impl Reader<'_> {
                 } else {
                     format!("{}; {}", first.title, first.basis)
                 };
-                Above { formula: symbols(first)?.lines(page::COLUMN - 12.0, page::COLUMN - 12.0, page::TABLE_PT), words }
+                Above {
+                    formula: symbols(first)?.lines(page::COLUMN - 12.0, page::COLUMN - 12.0, page::TABLE_PT),
+                    words,
+                }
             };
             let figures = steps.iter().map(|step| typeset::figure(step.result.printed)).collect();
             let unit = typeset::unit(&first.result.unit);
@@ -125,8 +126,11 @@ impl Reader<'_> {
     /// Weighted sums as tables: cases, then combinations with their factors above.
     pub(super) fn matrix(&self, grid: &Grid) -> Vec<Table> {
         let cases = self.summed_cases(grid);
-        let heads: Vec<(String, bool)> =
-            cases.iter().map(|case| (case.clone(), false)).chain(grid.heads.iter().map(|h| (h.0.clone(), true))).collect();
+        let heads: Vec<(String, bool)> = cases
+            .iter()
+            .map(|case| (case.clone(), false))
+            .chain(grid.heads.iter().map(|h| (h.0.clone(), true)))
+            .collect();
         let mut lines = self.factor_lines(grid, &cases);
         let factors = lines.len();
         lines.extend(grid.rows.iter().enumerate().filter_map(|(number, row)| self.sum_line(number, row, &cases)));
@@ -179,7 +183,11 @@ impl Reader<'_> {
     }
 
     /// Factor and figure of a case in a step that sums.
-    fn term<'s>(&'s self, step: &'s working::Step, case: &str) -> Option<(Option<&'s working::Input>, &'s working::Input)> {
+    fn term<'s>(
+        &'s self,
+        step: &'s working::Step,
+        case: &str,
+    ) -> Option<(Option<&'s working::Input>, &'s working::Input)> {
         let of = |input: &&working::Input| {
             step_of(input).and_then(|index| self.working.steps.get(index)).and_then(|step| step.case.as_deref())
                 == Some(case)
@@ -214,7 +222,8 @@ impl Reader<'_> {
             let mut terms = row.iter().filter_map(step).filter_map(|step| self.term(step, case));
             terms.next().map_or_else(|| "0".to_owned(), |(_, input)| typeset::figure(input.printed))
         });
-        let sums = row.iter().map(|cell| step(cell).map_or("0".to_owned(), |step| typeset::figure(step.result.printed)));
+        let sums =
+            row.iter().map(|cell| step(cell).map_or("0".to_owned(), |step| typeset::figure(step.result.printed)));
         Some(Line {
             number: (number + 1).to_string(),
             label: first.symbol.clone(),
@@ -236,19 +245,19 @@ impl Reader<'_> {
                 None => words.push((from, vec![input.name.clone()])),
             }
         }
-        let list: Vec<String> = words.into_iter().map(|(from, names)| format!("{}: {from}", names.join(", "))).collect();
+        let list: Vec<String> =
+            words.into_iter().map(|(from, names)| format!("{}: {from}", names.join(", "))).collect();
         (!list.is_empty()).then(|| list.join("; "))
     }
 }
 
 impl Line {
     fn row(&self, part: &std::ops::Range<usize>) -> Row {
-        let mut cells = vec![
-            Cell::text(self.number.clone()),
-            Cell::prose(self.label.clone()),
-            Cell::text(self.unit.clone()),
-        ];
-        cells.extend(part.clone().filter_map(|index| self.figures.get(index)).map(|figure| Cell::figures(figure.clone())));
+        let mut cells =
+            vec![Cell::text(self.number.clone()), Cell::prose(self.label.clone()), Cell::text(self.unit.clone())];
+        cells.extend(
+            part.clone().filter_map(|index| self.figures.get(index)).map(|figure| Cell::figures(figure.clone())),
+        );
         Row { bold: self.bold, ..Row::of(cells) }
     }
 }
@@ -266,9 +275,8 @@ fn step_of(input: &working::Input) -> Option<usize> {
 
 /// How the columns are shared out among tables, each as wide as the text column allows.
 fn chunks(lines: &[&Line], columns: usize, labels: [f64; 3]) -> Vec<std::ops::Range<usize>> {
-    let widest = lines.iter().flat_map(|line| &line.figures).map(|figure| {
-        Cell::figures(figure.clone()).width(SMALL_PT) + GAP
-    });
+    let widest =
+        lines.iter().flat_map(|line| &line.figures).map(|figure| Cell::figures(figure.clone()).width(SMALL_PT) + GAP);
     let each = widest.fold(NARROWEST, f64::max);
     let room = page::COLUMN - labels.iter().sum::<f64>();
     let count = ((room / each) as usize).max(1);

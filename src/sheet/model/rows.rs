@@ -45,8 +45,7 @@ pub fn tabulated(steps: &[&working::Step], labels: &Labels) -> Result<(String, O
 
 /// Steps whose making the sentence tells: number, symbol, numbers put in, result with its unit.
 pub fn listed(steps: &[&working::Step], labels: &Labels) -> Result<Table, Fault> {
-    let results: Vec<Cell> =
-        steps.iter().map(|step| Cell::quantity(step.result.printed, &step.result.unit)).collect();
+    let results: Vec<Cell> = steps.iter().map(|step| Cell::quantity(step.result.printed, &step.result.unit)).collect();
     let end = results.iter().map(|cell| cell.width(page::TABLE_PT)).fold(18.0, f64::max) + page::GAP;
     let columns = vec![
         Column::text("").wide(7.0),

@@ -238,7 +238,11 @@ impl Table {
         let (size, white) = if self.small { (8.0, 1.4) } else { (page::TABLE_PT, 2.6) };
         let head = column.map_or(0.0, |column| column.head.longest(false, size));
         let unit = column.map_or(0.0, |column| text_width(&column.unit, Face::Regular, 8.0));
-        let cells = self.rows.iter().filter(|row| !row.span).filter_map(|row| Some(row.cells.get(index)?.longest(row.bold, size)));
+        let cells = self
+            .rows
+            .iter()
+            .filter(|row| !row.span)
+            .filter_map(|row| Some(row.cells.get(index)?.longest(row.bold, size)));
         cells.fold(head.max(unit), f64::max) + white
     }
 

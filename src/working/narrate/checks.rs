@@ -1,6 +1,6 @@
 //! Allowable deflections against found ones.
 
-use super::places::Worked;
+use super::places::{Worked, near};
 use super::sums::Totals;
 use super::{Demand, Narrator, finding};
 use crate::analysis::equilibrium as sums;
@@ -34,8 +34,9 @@ impl Narrator<'_> {
             else {
                 continue;
             };
-            let place =
-                places.iter().find(|place| place.combination == demand.combination && place.spot == demand.spot);
+            let place = places.iter().find(|place| {
+                place.combination == demand.combination && near(place.spot, demand.spot, self.member.end().x())
+            });
             let (Some(place), Some(totals)) = (place.cloned(), combinations.get(demand.combination)) else { continue };
             let name = self.member.combinations.get(demand.combination).map(|c| c.name.clone()).unwrap_or_default();
             self.builder.tag(name.clone());

@@ -103,9 +103,12 @@ impl Narrator<'_> {
         self.book.geometry = self.builder.block("Places and distances along the member, from its left end.");
         if has(self.member, |kind| matches!(kind, LoadKind::SelfWeight)) {
             self.builder.block("Gravity.");
-            if self.member.sections.iter().any(|section| {
-                matches!(section.weight, Some(Weight::MassPerLength(_) | Weight::Mass(..)))
-            }) {
+            if self
+                .member
+                .sections
+                .iter()
+                .any(|section| matches!(section.weight, Some(Weight::MassPerLength(_) | Weight::Mass(..))))
+            {
                 self.gravity();
             }
         }

@@ -71,9 +71,10 @@ impl Narrator<'_> {
             self.builder.block_like(sentence, likes);
             let acts = self.combined(index);
             self.book.combined.clone_from(&acts);
+            let length = member.end().x();
             let under = Under { name: &name, field: &field, totals, acts: &acts };
             for wish in self.wishes(&field, demands, index) {
-                let done = |known: &&Worked| known.combination == index && known.spot == wish.spot;
+                let done = |known: &&Worked| known.combination == index && near(known.spot, wish.spot, length);
                 let known = worked.iter().find(done).map(|known: &Worked| known.x.clone());
                 if wish.want == Want::Deflection && known.is_some() {
                     continue;
@@ -119,4 +120,9 @@ impl Narrator<'_> {
         }
         wishes
     }
+}
+
+/// Whether two places are one: extremes of the deflection and of its distance from a level chord are found apart.
+pub fn near(left: Spot, right: Spot, length: f64) -> bool {
+    left.piece == right.piece && left.side == right.side && (left.x - right.x).abs() <= 1e-8 * length
 }

@@ -15,7 +15,8 @@ use crate::working::trace::Traced;
 pub type Pair = (Traced, Traced);
 
 const CUTS: &str = "Free bodies, right to left: shear and bending moment at every cut.";
-const CHAIN: &str = "Pieces chained, left to right: own bending of each piece, then shift of its wall, turn times length, own bending.";
+const CHAIN: &str =
+    "Pieces chained, left to right: own bending of each piece, then shift of its wall, turn times length, own bending.";
 
 fn nothing() -> Pair {
     (Traced::zero(), Traced::zero())
