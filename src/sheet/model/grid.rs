@@ -104,7 +104,7 @@ impl Reader<'_> {
                 head.clone()
             };
             columns.push(Column {
-                head: Cell::text(head),
+                head: Cell::prose(head),
                 unit: second.clone(),
                 align: Align::Right,
                 width: page::tenth(each - 0.05),

@@ -57,12 +57,20 @@ impl Narrator<'_> {
         let redundants = self.analysis.model.redundants.clone();
         let count = self.analysis.model.pieces.len();
         let mut told = Vec::new();
+        // Many are told side by side in one chapter, a column each.
+        let together = redundants.len() > 2;
         for (index, redundant) in redundants.iter().enumerate() {
             let words = self.redundant_words(*redundant);
             let symbol = self.redundant_symbol(*redundant);
-            self.builder.chapter(Chapters::UnitState(index), format!("Unit state: {words} is 1"));
+            if !together {
+                self.builder.chapter(Chapters::UnitState(index), format!("Unit state: {words} is 1"));
+            } else if index == 0 {
+                self.builder.chapter(Chapters::UnitState(0), "Unit states: each redundant in turn is 1");
+            }
             self.builder.tag(format!("{}", index + 1));
-            self.builder.block(format!("The released member carries nothing but the {words}, taken as 1."));
+            self.book.column = together.then(|| format!("{}_{} = 1", symbol.base, symbol.sub));
+            let sentence = format!("The released member carries nothing but the {words}, taken as 1.");
+            self.builder.block(sentence);
             let one = self.builder.choose(format!("unit value, {words}"), symbol, Decimal::ONE, Unit::none(), 1.0);
             let acts = vec![Vec::new(); count];
             let scale = Scale::per(&self.builder.base, *redundant);
@@ -72,6 +80,7 @@ impl Narrator<'_> {
             told.push(self.tell(state, &loads, &scale));
         }
         self.book.scale = None;
+        self.book.column = None;
         self.builder.tag("");
         told
     }

@@ -37,6 +37,8 @@ pub struct Book {
     pub combined: Vec<Vec<super::acts::Act>>,
     differences: Vec<(Vec<crate::working::trace::Source>, Traced)>,
     gravity: Option<Traced>,
+    /// The head of the unit state's column, where unit states stand side by side.
+    pub column: Option<String>,
     /// Whether combinations are being summed.
     pub combining: bool,
     places: BTreeMap<Place, Traced>,

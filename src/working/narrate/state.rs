@@ -14,6 +14,7 @@ use crate::working::trace::Traced;
 /// A pair of figures: shear and moment, or deflection and turn, or force and moment.
 pub type Pair = (Traced, Traced);
 
+const REACTIONS: &str = "Reactions of the released member, by equilibrium of its parts.";
 const CUTS: &str = "Free bodies, right to left: shear and bending moment at every cut.";
 const CHAIN: &str =
     "Pieces chained, left to right: own bending of each piece, then shift of its wall, turn times length, own bending.";
@@ -77,16 +78,16 @@ impl<'a> Narrator<'a> {
         let zeros = vec![Traced::zero(); parts];
         let mut teller =
             Teller { narrator: self, state, loads, scale, told, joints: zeros.clone(), joint_moments: zeros, carried };
-        teller.narrator.builder.block("Reactions of the released member, by equilibrium of its parts.");
+        teller.stage(REACTIONS);
         teller.apply_unit();
         for part in &order {
             teller.balance(*part);
         }
-        teller.narrator.builder.block(CUTS);
+        teller.stage(CUTS);
         for part in 0..parts {
             teller.cut(part);
         }
-        teller.narrator.builder.block(CHAIN);
+        teller.stage(CHAIN);
         for part in order.iter().rev() {
             teller.chain(*part);
         }
@@ -307,8 +308,29 @@ impl Teller<'_, '_, '_> {
         }
     }
 
+    /// A block for one stage of a state; of many unit states it stands as a column beside the others.
+    fn stage(&mut self, sentence: &str) {
+        match self.narrator.book.column.clone() {
+            Some(head) => {
+                let likes = Likes {
+                    key: sentence.to_owned(),
+                    head: (head, String::new()),
+                    fewest: 2,
+                    sentence: format!("{sentence} Symbols are those of the first column."),
+                };
+                self.narrator.builder.block_like(sentence, likes);
+            }
+            None => {
+                self.narrator.builder.block(sentence);
+            }
+        }
+    }
+
     /// A block for one piece, which stands as a column beside others where their derivations are alike.
     fn column(&mut self, sentence: &str, piece: &Piece, what: &str) {
+        if self.narrator.book.column.is_some() {
+            return;
+        }
         let (from, to) = (self.narrator.place_name(piece.from), self.narrator.place_name(piece.to));
         let likes = Likes {
             key: what.to_owned(),
@@ -377,7 +399,7 @@ impl Teller<'_, '_, '_> {
                 *slot = (before, carried.clone());
             }
         }
-        if !walled {
+        if !walled && self.narrator.book.column.is_none() {
             self.narrator.builder.block(CHAIN);
         }
         let start = if walled { nothing() } else { self.start(index, &part) };
