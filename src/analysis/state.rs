@@ -174,8 +174,17 @@ impl Solver<'_> {
         }
     }
 
-    /// Downward force on a part and its clockwise moment about the place `about`, without what holds it.
-    fn load_of(&self, index: usize, part: &Part, about: f64, loading: &Loading<'_>, sketch: &Sketch) -> (f64, f64) {
+    /// Downward force on a part and its clockwise moment about the place `about`, without what holds it; `joint` is the
+    /// downward force of the joint at its right end.
+    fn load_of(
+        &self,
+        index: usize,
+        part: &Part,
+        about: f64,
+        joint: f64,
+        loading: &Loading<'_>,
+        sketch: &Sketch,
+    ) -> (f64, f64) {
         let (mut force, mut moment) = (0.0, 0.0);
         let range = part.first..part.last;
         let lists = loading.actions.get(range.clone()).unwrap_or_default();
@@ -198,7 +207,7 @@ impl Solver<'_> {
         if let Some(before) = index.checked_sub(1) {
             push(-at(&sketch.joints, before), part.from.x(), at(&sketch.joint_moments, before));
         }
-        push(at(&sketch.joints, index), part.to.x(), -at(&sketch.joint_moments, index));
+        push(joint, part.to.x(), -at(&sketch.joint_moments, index));
         (force, moment)
     }
 
@@ -208,13 +217,18 @@ impl Solver<'_> {
         match part.hold {
             Hold::Deflections(first, second) => {
                 let (x1, x2) = (self.holder_x(part, first), self.holder_x(part, second));
-                let (force, moment) = self.load_of(index, part, x1, loading, sketch);
+                // What the joint brings right above the far holder goes straight into it: no residual travels on.
+                let joint = sketch.joints.get(index).copied().unwrap_or_default();
+                let (direct, apart) = if x2 == part.to.x() { (joint, 0.0) } else { (0.0, joint) };
+                let (force, moment) = self.load_of(index, part, x1, apart, loading, sketch);
                 let far = if moment == 0.0 { 0.0 } else { sums::balancing_force(moment, x2 - x1) };
-                self.give_force(index, second, far, sketch);
+                self.give_force(index, second, far + direct, sketch);
                 self.give_force(index, first, force - far, sketch);
             }
             Hold::DeflectionAndTurn(holder, support) => {
-                let (force, moment) = self.load_of(index, part, self.holder_x(part, holder), loading, sketch);
+                let joint = sketch.joints.get(index).copied().unwrap_or_default();
+                let about = self.holder_x(part, holder);
+                let (force, moment) = self.load_of(index, part, about, joint, loading, sketch);
                 self.give_force(index, holder, force, sketch);
                 if let Some(reaction) = sketch.reactions.get_mut(support) {
                     reaction.moment += moment;

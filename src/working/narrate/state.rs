@@ -132,8 +132,8 @@ impl Teller<'_, '_, '_> {
         }
     }
 
-    /// Downward forces on a part and their clockwise moments about a place.
-    fn terms(&mut self, index: usize, part: &Part, about: Place) -> (Vec<Traced>, Vec<Traced>) {
+    /// Downward forces on a part and their clockwise moments about a place; `joint` is the force at its right end.
+    fn terms(&mut self, index: usize, part: &Part, about: Place, joint: Traced) -> (Vec<Traced>, Vec<Traced>) {
         let (mut forces, mut moments) = (Vec::new(), Vec::new());
         for piece in part.first..part.last {
             let Some(geometry) = self.piece(piece) else { continue };
@@ -160,7 +160,7 @@ impl Teller<'_, '_, '_> {
         if let Some(before) = index.checked_sub(1) {
             push(self.narrator, -at(&self.joints, before), part.from, at(&self.joint_moments, before));
         }
-        push(self.narrator, at(&self.joints, index), part.to, -at(&self.joint_moments, index));
+        push(self.narrator, joint, part.to, -at(&self.joint_moments, index));
         (forces, moments)
     }
 
@@ -169,22 +169,27 @@ impl Teller<'_, '_, '_> {
         match part.hold {
             Hold::Deflections(first, second) => {
                 let (x1, x2) = (self.holder_place(&part, first), self.holder_place(&part, second));
-                let (mut forces, moments) = self.terms(index, &part, x1);
+                let joint = self.joints.get(index).cloned().unwrap_or_else(Traced::zero);
+                // What the joint brings right above the far holder goes straight into it.
+                let (direct, apart) = if x2 == part.to { (joint, Traced::zero()) } else { (Traced::zero(), joint) };
+                let (mut forces, moments) = self.terms(index, &part, x1, apart);
                 let live: Vec<Traced> = moments.into_iter().filter(|term| !term.is_zero()).collect();
-                let far = if live.is_empty() {
-                    Traced::zero()
-                } else {
-                    let arm = self.narrator.distance(x1, x2);
-                    self.far_force(index, second, live, arm, x1)
-                };
+                if live.is_empty() && forces.is_empty() {
+                    self.set_force(index, second, &direct);
+                    self.set_force(index, first, &Traced::zero());
+                    return;
+                }
+                let arm = if live.is_empty() { Traced::zero() } else { self.narrator.distance(x1, x2) };
+                let far = self.far_force(index, second, live, arm, x1, direct.clone());
                 self.set_force(index, second, &far);
-                forces.push(-far);
+                forces.push(direct - far);
                 let near = self.near_force(index, first, forces);
                 self.set_force(index, first, &near);
             }
             Hold::DeflectionAndTurn(holder, support) => {
                 let about = self.holder_place(&part, holder);
-                let (forces, moments) = self.terms(index, &part, about);
+                let joint = self.joints.get(index).cloned().unwrap_or_else(Traced::zero);
+                let (forces, moments) = self.terms(index, &part, about, joint);
                 let force = self.near_force(index, holder, forces);
                 self.set_force(index, holder, &force);
                 let name = self.narrator.support_name(support);
@@ -228,8 +233,20 @@ impl Teller<'_, '_, '_> {
         )
     }
 
-    fn far_force(&mut self, part: usize, holder: Holder, moments: Vec<Traced>, arm: Traced, about: Place) -> Traced {
+    #[expect(clippy::too_many_arguments, reason = "a holder, and everything that its force comes from")]
+    fn far_force(
+        &mut self,
+        part: usize,
+        holder: Holder,
+        moments: Vec<Traced>,
+        arm: Traced,
+        about: Place,
+        direct: Traced,
+    ) -> Traced {
         let what = self.force_finding(part, holder);
+        if moments.is_empty() {
+            return self.narrator.builder.find(what, direct);
+        }
         let moments = if moments.len() > 5 {
             let at = self.narrator.place_name(about);
             let value = moments.iter().map(|term| self.narrator.builder.value(term)).sum();
@@ -239,7 +256,7 @@ impl Teller<'_, '_, '_> {
         } else {
             sums::sum(moments)
         };
-        self.narrator.builder.find(what, sums::balancing_force(moments, arm))
+        self.narrator.builder.find(what, sums::balancing_force(moments, arm) + direct)
     }
 
     fn near_force(&mut self, part: usize, holder: Holder, forces: Vec<Traced>) -> Traced {
