@@ -208,6 +208,7 @@ impl Sub for Traced {
             (Some(0), _) => -other,
             (_, Some(0)) => self,
             (Some(a), Some(b)) => Self::whole(a - b),
+            _ if self.source().is_some() && self.source() == other.source() => Self::zero(),
             _ => match other.node() {
                 Node::Neg(opposite) => Self::made(Node::Add(self, opposite.clone())),
                 _ => Self::made(Node::Sub(self, other)),

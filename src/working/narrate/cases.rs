@@ -7,7 +7,7 @@ use crate::analysis::equilibrium as sums;
 use crate::analysis::stability::splits;
 use crate::member::{LoadKind, Redundant};
 use crate::quantity::{Decimal, Unit};
-use crate::working::draft::{Set, Symbol};
+use crate::working::draft::{Likes, Set, Symbol};
 use crate::working::narrate::given::LoadBook;
 use crate::working::step::Chapters;
 use crate::working::trace::Traced;
@@ -22,6 +22,8 @@ pub struct Flexibilities {
     /// u_ij after elimination, j >= i, for three and more.
     pub upper: Vec<Vec<Traced>>,
 }
+
+const BACK: &str = "Back substitution, from the last redundant to the first.";
 
 impl Narrator<'_> {
     /// Short name of a redundant in subscripts: the support, with the letter where both are released there.
@@ -70,7 +72,20 @@ impl Narrator<'_> {
             self.builder.tag(format!("{}", index + 1));
             self.book.column = together.then(|| format!("{}_{} = 1", symbol.base, symbol.sub));
             let sentence = format!("The released member carries nothing but the {words}, taken as 1.");
-            self.builder.block(sentence);
+            match self.book.column.clone() {
+                Some(head) => {
+                    let likes = Likes {
+                        key: "unit".to_owned(),
+                        head: (head, String::new()),
+                        fewest: 2,
+                        sentence: "The released member carries nothing but one redundant, taken as 1.".to_owned(),
+                    };
+                    self.builder.block_like(sentence, likes);
+                }
+                None => {
+                    self.builder.block(sentence);
+                }
+            }
             let one = self.builder.choose(format!("unit value, {words}"), symbol, Decimal::ONE, Unit::none(), 1.0);
             let acts = vec![Vec::new(); count];
             let scale = Scale::per(&self.builder.base, *redundant);
@@ -353,6 +368,7 @@ impl Narrator<'_> {
         };
         let scale = self.plain();
         let mut y: Vec<Traced> = Vec::with_capacity(count);
+        self.builder.block("Right-hand sides, eliminated like the flexibilities.");
         for (j, gap) in gaps.iter().enumerate() {
             let rows = (0..j).map(|k| (u(k, j), y.get(k).cloned().unwrap_or_else(Traced::zero), u(k, k)));
             let rows: Vec<_> = rows.filter(|(left, right, _)| !left.is_zero() && !right.is_zero()).collect();
@@ -370,6 +386,13 @@ impl Narrator<'_> {
         }
         let mut x = vec![Traced::zero(); count];
         for i in (0..count).rev() {
+            let likes = Likes {
+                key: "back".to_owned(),
+                head: (self.named(redundants, i), String::new()),
+                fewest: 3,
+                sentence: format!("{BACK} Symbols are those of the first column."),
+            };
+            self.builder.block_like(BACK, likes);
             let known: Vec<(Traced, Traced)> = (i + 1..count)
                 .map(|j| (u(i, j), x.get(j).cloned().unwrap_or_else(Traced::zero)))
                 .filter(|(entry, x)| !entry.is_zero() && !x.is_zero())

@@ -6,7 +6,7 @@ use super::{Demand, Narrator, finding};
 use crate::analysis::equilibrium as sums;
 use crate::member::{Limit, Measured, Place, Span};
 use crate::quantity::{Decimal, Unit};
-use crate::working::draft::Symbol;
+use crate::working::draft::{Likes, Symbol};
 use crate::working::step::Chapters;
 use crate::working::trace::Traced;
 use crate::working::units::What;
@@ -28,7 +28,10 @@ impl Narrator<'_> {
             };
             self.builder.choose("small units of length in one", Symbol::new("k", "s"), figure, unit, 1.0)
         };
-        for (number, demand) in demands.iter().enumerate() {
+        let order = governing_first(demands);
+        let governing = order.first().copied();
+        for number in order {
+            let Some(demand) = demands.get(number) else { continue };
             let (Some(limit), Some(span)) =
                 (self.member.limits.get(demand.limit).cloned(), self.member.spans.get(demand.span).cloned())
             else {
@@ -40,7 +43,22 @@ impl Narrator<'_> {
             let (Some(place), Some(totals)) = (place.cloned(), combinations.get(demand.combination)) else { continue };
             let name = self.member.combinations.get(demand.combination).map(|c| c.name.clone()).unwrap_or_default();
             self.builder.tag(name.clone());
-            self.builder.block(format!("Limit {}, combination {name}, span {}.", limit.name, span.name));
+            let sentence = format!("Limit {}, combination {name}, span {}.", limit.name, span.name);
+            // The governing check stands by itself, in full.
+            if Some(number) == governing {
+                self.builder.block(format!("The governing check. {sentence}"));
+            } else {
+                let likes = Likes {
+                    key: format!("check {}", limit.name),
+                    head: (name.clone(), span.name.replace('-', "–")),
+                    fewest: 2,
+                    sentence: format!(
+                        "Limit {}, each combination and span. Symbols are those of the first column.",
+                        limit.name
+                    ),
+                };
+                self.builder.block_like(sentence, likes);
+            }
             let ordinate = self.ordinate(&limit, &span, totals, &place, demand, number + 1);
             let small = base.shown_deflection();
             let what = finding(
@@ -171,4 +189,13 @@ impl Narrator<'_> {
         self.book.constants.insert(symbol, step.clone());
         step
     }
+}
+
+/// Indices of the demands, the one of greatest utilisation first.
+fn governing_first(demands: &[Demand]) -> Vec<usize> {
+    let greatest = (0..demands.len()).max_by(|a, b| {
+        let of = |index: &usize| demands.get(*index).map_or(0.0, |demand| demand.utilisation);
+        of(a).total_cmp(&of(b)).then(b.cmp(a))
+    });
+    greatest.into_iter().chain((0..demands.len()).filter(|index| Some(*index) != greatest)).collect()
 }

@@ -61,6 +61,20 @@ struct Teller<'n, 'a, 'l> {
 }
 
 impl<'a> Narrator<'a> {
+    /// A block for a stretch of the member, which may stand as a column beside others.
+    fn stretch_column(&mut self, sentence: &str, from: Place, to: Place, what: &str) {
+        if self.book.column.is_some() {
+            return;
+        }
+        let likes = Likes {
+            key: what.to_owned(),
+            head: (format!("{}–{}", self.place_name(from), self.place_name(to)), String::new()),
+            fewest: 3,
+            sentence: format!("{sentence} Symbols are those of the first column."),
+        };
+        self.builder.block_like(sentence, likes);
+    }
+
     /// Tells a state of the released member.
     pub fn tell(&mut self, state: &State, loads: &Loads<'_>, scale: &Scale) -> Told {
         let model = &self.analysis.model;
@@ -81,6 +95,7 @@ impl<'a> Narrator<'a> {
         teller.stage(REACTIONS);
         teller.apply_unit();
         for part in &order {
+            teller.part_column(REACTIONS, *part, "balance");
             teller.balance(*part);
         }
         teller.stage(CUTS);
@@ -345,17 +360,14 @@ impl Teller<'_, '_, '_> {
 
     /// A block for one piece, which stands as a column beside others where their derivations are alike.
     fn column(&mut self, sentence: &str, piece: &Piece, what: &str) {
-        if self.narrator.book.column.is_some() {
-            return;
+        self.narrator.stretch_column(sentence, piece.from, piece.to, what);
+    }
+
+    /// The same for a part.
+    fn part_column(&mut self, sentence: &str, part: usize, what: &str) {
+        if let Some(part) = self.part(part) {
+            self.narrator.stretch_column(sentence, part.from, part.to, what);
         }
-        let (from, to) = (self.narrator.place_name(piece.from), self.narrator.place_name(piece.to));
-        let likes = Likes {
-            key: what.to_owned(),
-            head: (format!("{from}–{to}"), String::new()),
-            fewest: 3,
-            sentence: format!("{sentence} Symbols are those of the first column."),
-        };
-        self.narrator.builder.block_like(sentence, likes);
     }
 
     fn sway_findings(&self, sway: Sway, title: &str, letters: [&'static str; 2], sub: &str) -> [super::Finding; 2] {
@@ -416,9 +428,7 @@ impl Teller<'_, '_, '_> {
                 *slot = (before, carried.clone());
             }
         }
-        if !walled && self.narrator.book.column.is_none() {
-            self.narrator.builder.block(CHAIN);
-        }
+        self.part_column(CHAIN, index, "start");
         let start = if walled { nothing() } else { self.start(index, &part) };
         self.place_pieces(&part, &start);
     }
