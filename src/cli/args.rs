@@ -26,9 +26,18 @@ pub enum Command {
         /// Where to write; beside the deck, with the ending pdf, where nothing is said.
         #[arg(short, long)]
         output: Option<PathBuf>,
-        /// The paper.
-        #[arg(long, value_enum, default_value_t = PaperSize::A4)]
-        paper: PaperSize,
+        /// The paper; where nothing is said, what the deck says, else A4.
+        #[arg(long, value_enum)]
+        paper: Option<PaperSize>,
+        /// Every step, or answer, figures, reactions and checks alone; where nothing is said, what the deck says.
+        #[arg(long, value_enum)]
+        detail: Option<Detail>,
+        /// A folder with the office's own files in the place of templates of the same names.
+        #[arg(long, value_name = "DIR")]
+        templates: Option<PathBuf>,
+        /// Leave deck and results out of the PDF, for portals that refuse attachments; their hashes are printed all the same.
+        #[arg(long)]
+        without_attachments: bool,
     },
     /// Print results without a PDF.
     #[command(
@@ -62,4 +71,13 @@ pub enum PaperSize {
     A4,
     /// 8.5 in by 11 in.
     Letter,
+}
+
+/// How much a sheet shows.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum Detail {
+    /// Every step.
+    Full,
+    /// Answer, figures, reactions, checks and crosschecks.
+    Brief,
 }

@@ -49,7 +49,9 @@ pub fn run() -> Outcome {
         }
     };
     match args.command {
-        Command::Sheet { deck, output, paper } => sheet::run(&deck, output, paper),
+        Command::Sheet { deck, output, paper, detail, templates, without_attachments } => {
+            sheet::run(&deck, output, &sheet::Said { paper, detail, templates, without_attachments })
+        }
         Command::Solve { deck, json, working, at } => solve::run(&deck, json, working, &at),
         Command::New { file } => new::run(&file),
     }

@@ -190,7 +190,9 @@ impl<'t> Reader<'t> {
             return None;
         }
         let si = typed.terms.iter().try_fold(0.0, |sum, term| Some(sum + term.figure.to_f64() * term.unit.si()?));
-        let Some(value_si) = si.and_then(T::from_si) else {
+        // Far beyond any structure, and near enough to 1 that no product of them overflows.
+        let sane = |si: &f64| *si == 0.0 || (1e-30..=1e30).contains(&si.abs());
+        let Some(value_si) = si.filter(sane).and_then(T::from_si) else {
             self.fault(value.span(), format!("{key} is beyond what can be computed"), "");
             return None;
         };

@@ -1,15 +1,76 @@
 //! An issued sheet: everything a calculation knows, put on paper.
 
+mod document;
 mod plots;
 
-use crate::calculation::{Calculation, both_routes};
+use sha2::{Digest, Sha256};
+
+use crate::calculation::{Calculation, both_routes, hexadecimal};
 use crate::figure::{Cut, Words};
 use crate::member::{Member, Purpose};
 use crate::quantity::Decimal;
 use crate::sheet::model::{Cell, Column, Findings, Parts, Row, Table};
-use crate::sheet::{self, Attachments, Model, Options, Printed, typeset};
+use crate::sheet::{self, Attachments, Model, Options, Paper, Printed, Templates, typeset};
 use crate::verdict::{Check, rounded_up};
 use crate::working::{Step, Working, place_names};
+
+/// How a sheet is to be issued: all that its bytes depend on besides the deck and the version of the program.
+#[derive(Clone, Debug, Default)]
+pub struct Wishes {
+    /// Name of the deck's file, without folders.
+    pub file: String,
+    /// The paper.
+    pub paper: Paper,
+    /// Whether the short form is wanted.
+    pub brief: bool,
+    /// Number of the first sheet.
+    pub first_sheet: usize,
+    /// The templates.
+    pub templates: Templates,
+    /// Whether deck and results travel inside.
+    pub attach: bool,
+}
+
+impl Wishes {
+    /// What the deck wishes for, under the name of its file.
+    pub fn of(member: &Member, file: impl Into<String>) -> Self {
+        let sheet = member.record.sheet;
+        Self {
+            file: file.into(),
+            paper: if sheet.letter == Some(true) { Paper::Letter } else { Paper::A4 },
+            brief: sheet.brief.unwrap_or(false),
+            first_sheet: sheet.first_sheet.unwrap_or(1),
+            templates: Templates::default(),
+            attach: true,
+        }
+    }
+
+    /// The same as the results carry them, so that the sheet can be made again from itself.
+    pub fn json(&self) -> serde_json::Value {
+        serde_json::json!({
+            "program": "Proofspan",
+            "version": env!("CARGO_PKG_VERSION"),
+            "file": self.file,
+            "paper": match self.paper { Paper::A4 => "a4", Paper::Letter => "letter" },
+            "detail": if self.brief { "brief" } else { "full" },
+            "first_sheet": self.first_sheet,
+            "templates": self.templates.own_hash(),
+        })
+    }
+
+    /// Reads what [`Self::json`] wrote; the templates are the embedded ones. `None` where something is missing.
+    pub fn read(value: &serde_json::Value) -> Option<Self> {
+        let text = |key: &str| value.get(key).and_then(serde_json::Value::as_str);
+        Some(Self {
+            file: text("file")?.to_owned(),
+            paper: if text("paper")? == "letter" { Paper::Letter } else { Paper::A4 },
+            brief: text("detail")? == "brief",
+            first_sheet: usize::try_from(value.get("first_sheet")?.as_u64()?).ok()?,
+            templates: Templates::default(),
+            attach: true,
+        })
+    }
+}
 
 /// Prints the sheet of a calculation.
 ///
@@ -19,14 +80,12 @@ pub fn print(
     calculation: &Calculation,
     working: &Working,
     deck: &str,
-    file: &str,
-    mut options: Options,
+    wishes: &Wishes,
 ) -> Result<Printed, sheet::Fault> {
-    let labels = options.templates.labels()?;
+    let labels = wishes.templates.labels()?;
     let member = &calculation.member;
-    let results = format!("{}\n", calculation.json(Some(working)));
-    options.ident.clone_from(&calculation.deck_sha256);
-    let findings = findings(calculation, working, file);
+    let results = results(calculation, working, wishes);
+    let findings = findings(calculation, working, wishes, &results);
     let words = words(calculation, working);
     let model = Model::compose(&Parts {
         member,
@@ -34,12 +93,34 @@ pub fn print(
         working,
         words: &words,
         findings: &findings,
-        file,
+        file: &wishes.file,
         deck,
         labels: &labels,
+        brief: wishes.brief,
     })?;
-    options.attachments = Attachments { deck: Some(deck.as_bytes().to_vec()), results: Some(results.into_bytes()) };
+    let attachments = if wishes.attach {
+        Attachments { deck: Some(deck.as_bytes().to_vec()), results: Some(results.into_bytes()) }
+    } else {
+        Attachments::default()
+    };
+    let options = Options {
+        paper: wishes.paper,
+        first_sheet: wishes.first_sheet,
+        templates: wishes.templates.clone(),
+        attachments,
+        ident: calculation.deck_sha256.clone(),
+        ..Options::default()
+    };
     sheet::print(&model, &options)
+}
+
+/// The results that travel inside a sheet: the results of the deck, the working, and how the sheet was issued.
+pub fn results(calculation: &Calculation, working: &Working, wishes: &Wishes) -> String {
+    let mut results = calculation.json(Some(working));
+    if let Some(object) = results.as_object_mut() {
+        object.insert("sheet".to_owned(), wishes.json());
+    }
+    format!("{results}\n")
 }
 
 /// The step of a case or combination with this symbol.
@@ -61,13 +142,11 @@ fn words(calculation: &Calculation, working: &Working) -> Words {
     Words { cuts, rigidity, ..Words::default() }
 }
 
-fn findings(calculation: &Calculation, working: &Working, file: &str) -> Findings {
+fn findings(calculation: &Calculation, working: &Working, wishes: &Wishes, results: &str) -> Findings {
     let (member, verdict) = (&calculation.member, &calculation.verdict);
-    let mut assumptions: Vec<String> = member
-        .warnings
-        .iter()
-        .map(|warning| format!("The input is lawful but odd here: {}.", warning.message))
-        .collect();
+    let odd = member.warnings.iter().map(|warning| format!("The input is lawful but odd here: {}.", warning.message));
+    let mut assumptions: Vec<String> = document::assumptions(member);
+    assumptions.extend(odd);
     if !working.settled {
         assumptions.push(
             "The redundants chosen lose so many digits that twelve figures do not settle the last ones; choose others."
@@ -82,16 +161,22 @@ fn findings(calculation: &Calculation, working: &Working, file: &str) -> Finding
         checks: checks(calculation, working),
         reactions: reactions(calculation, working),
         plots: plots::plots(calculation, working),
+        agreement: agreement(calculation),
         crosschecks: crosschecks(calculation),
         cases: Some(cases(working)),
         sources: SOURCES.iter().map(|source| (*source).to_owned()).collect(),
         assumptions,
-        program: vec![
-            format!("Proofspan {}.", env!("CARGO_PKG_VERSION")),
-            format!("{} significant figures carried; verdicts are taken from unrounded values.", working.figures),
+        unconfirmed: member.record.unconfirmed(),
+        declared: document::declared(member),
+        revisions: document::revisions(member),
+        events: document::events(member),
+        program: document::program(calculation, working),
+        hashes: vec![
+            (wishes.file.clone(), calculation.deck_sha256.clone()),
+            ("results.json".to_owned(), hexadecimal(&Sha256::digest(results.as_bytes()))),
         ],
-        hashes: vec![(file.to_owned(), calculation.deck_sha256.clone())],
-        ..Findings::default()
+        totals: Vec::new(),
+        sums: Vec::new(),
     }
 }
 
@@ -219,44 +304,63 @@ fn reactions(calculation: &Calculation, working: &Working) -> Vec<Table> {
     vec![table]
 }
 
-fn crosschecks(calculation: &Calculation) -> Vec<Table> {
-    let columns = vec![head("figure", 62.0), head("force method", 26.0), head("stiffness method", 26.0)];
+/// How well the independent checks agree, in words.
+fn agreement(calculation: &Calculation) -> String {
     let agreement = calculation.agreement;
-    let percent = |value: f64| Decimal::nearest(value, 2);
-    let mut table = Table::new(
-        format!(
-            "Figures in N, N m and m. Largest relative difference {}, of loads against reactions {}, of mirrored flexibilities {}; a difference beyond 0.000001 stops the sheet.",
-            typeset::figure(percent(agreement.second_method)),
-            typeset::figure(percent(agreement.equilibrium)),
-            typeset::figure(percent(agreement.reciprocity)),
-        ),
-        "Figures by two methods",
-        columns,
-    );
+    let shown = |value: f64| typeset::figure(Decimal::nearest(value, 2));
+    format!(
+        "Every load case and combination was computed again by a stiffness method that shares nothing with the force method but the member. Largest relative difference between the two {}; of loads against reactions {}; of mirrored flexibilities {}. A difference beyond 0.000001 stops the sheet.",
+        shown(agreement.second_method),
+        shown(agreement.equilibrium),
+        shown(agreement.reciprocity),
+    )
+}
+
+fn crosschecks(calculation: &Calculation) -> Vec<Table> {
+    let columns = vec![
+        head("figure", 50.0),
+        head("force method", 24.0),
+        head("stiffness method", 24.0),
+        head("difference", 22.0),
+    ];
+    let mut table = Table::new("In N, N m and m", "Figures by two methods, and their difference", columns);
     for row in both_routes(&calculation.member, &calculation.analysis)
         .into_iter()
         .filter(|row| !row.what.starts_with("deflection") || row.first != 0.0)
         .take(60)
     {
-        let figures = [row.first, row.second].map(|value| Cell::text(typeset::figure(Decimal::nearest(value, 7))));
-        let [first, second] = figures;
-        table.rows.push(Row::of(vec![Cell::text(row.what), first, second]));
+        let shown = |value: f64, digits: u32| Cell::text(typeset::figure(Decimal::nearest(value, digits)));
+        let cells =
+            vec![Cell::text(row.what), shown(row.first, 7), shown(row.second, 7), shown(row.second - row.first, 1)];
+        table.rows.push(Row::of(cells));
     }
     vec![table]
 }
 
+/// The published source of a case or principle; editions from memory, to be confirmed.
+fn source_of(basis: &str) -> &'static str {
+    if basis.contains("cantilever") {
+        "Roark T. 8.1; AISC T. 3-23 *"
+    } else if basis.contains("Gauss") {
+        "Abramowitz, Stegun T. 25.4 *"
+    } else {
+        "common practice"
+    }
+}
+
 fn cases(working: &Working) -> Table {
-    let columns = vec![head("case or principle used", 62.0), head("first used at step", 30.0)];
-    let mut table = Table::new(
-        "What the steps rest on; sources stand at the end of the sheet.",
-        "Tabulated cases and principles",
-        columns,
-    );
+    let columns = vec![
+        head("case or principle used", 58.0),
+        head("source (* confirm the edition)", 40.0),
+        head("first at", 22.0),
+    ];
+    let mut table = Table::new("", "Tabulated cases and principles, with their sources", columns);
     let mut seen: Vec<&str> = Vec::new();
     for step in working.steps.iter().filter(|step| !step.basis.is_empty()) {
         if !seen.contains(&step.basis.as_str()) {
             seen.push(&step.basis);
-            table.rows.push(Row::of(vec![Cell::text(step.basis.clone()), Cell::text(step.id.clone())]));
+            let cells = [step.basis.as_str(), source_of(&step.basis), step.id.as_str()].map(Cell::text);
+            table.rows.push(Row::of(cells.to_vec()));
         }
     }
     table

@@ -7,9 +7,11 @@
 pub mod build;
 mod load;
 mod place;
+mod record;
 
 pub use load::{Case, Load, LoadKind, Nature, Stretch};
 pub use place::Place;
+pub use record::{Assumption, Declared, Part, Record, Revision, SheetWishes};
 
 use std::collections::BTreeMap;
 
@@ -46,6 +48,8 @@ pub struct Member {
     pub limits: Vec<Limit>,
     /// Every place that the deck typed, as first typed; ends of segments come from their lengths instead.
     pub typed_places: BTreeMap<Place, Typed>,
+    /// Revisions, assumptions, sources, and how the sheet is to be printed.
+    pub record: Record,
     /// What is lawful but odd; also printed on the sheet.
     pub warnings: Vec<Diagnostic>,
 }

@@ -24,13 +24,30 @@ fn fault(range: Range<usize>, message: impl Into<String>, hint: impl Into<String
 /// # Errors
 /// A missing or broken number, a decimal comma, a missing or unknown unit.
 pub fn parse_quantity(text: &str) -> Result<Typed, QuantityFault> {
-    let mut terms = Vec::new();
+    let mut terms: Vec<Term> = Vec::new();
     let mut at = skip_space(text, 0);
     while at < text.len() || terms.is_empty() {
+        if !terms.is_empty() {
+            // Feet and inches are often written with a hyphen; it is never a minus.
+            if text.get(at..).is_some_and(|rest| rest.starts_with(['-', '+'])) {
+                at = skip_space(text, at + 1);
+            }
+            if terms.iter().any(|term| term.figure.mantissa() < 0) {
+                let hint = "write it as one figure, as in \"-1.5 ft\"";
+                return Err(fault(0..text.len(), "a negative sum can be read in two ways", hint));
+            }
+        }
         let (figure, after) = number(text, at)?;
         let start = skip_space(text, after);
         let end = unit_end(text, start);
         let words = text.get(start..end).unwrap_or_default().trim_end();
+        if text.get(after..start).is_some_and(|gap| !gap.is_empty())
+            && text.get(start..).is_some_and(|rest| rest.starts_with(|c: char| c.is_ascii_digit()))
+            && !text.get(start..end).is_some_and(|unit| unit.starts_with("1/") || unit.starts_with("1 /"))
+        {
+            let hint = "write the digits of a number together, 1500, and then the unit";
+            return Err(fault(at..end.min(text.len()), "a space inside a number", hint));
+        }
         if words.is_empty() {
             return Err(fault(at..after, "a unit is missing behind the number", "write a unit, as in \"8.5 kN/m\""));
         }
@@ -57,7 +74,8 @@ fn number(text: &str, from: usize) -> Result<(Decimal, usize), QuantityFault> {
     }
     if bytes.get(end) == Some(&b',') && digit(end + 1) {
         let comma = from + end;
-        return Err(fault(comma..comma + 1, "a decimal comma", "write a point: 1.5"));
+        let hint = "write a point for the decimals, 1.5, and no sign between thousands, 1500";
+        return Err(fault(comma..comma + 1, "a decimal comma, or a comma between thousands", hint));
     }
     if bytes.get(end) == Some(&b'.') {
         end += 1;
@@ -85,14 +103,18 @@ fn number(text: &str, from: usize) -> Result<(Decimal, usize), QuantityFault> {
 fn unit_end(text: &str, from: usize) -> usize {
     let rest = text.get(from..).unwrap_or_default();
     let mut before_space = false;
+    let mut before_caret = false;
     for (index, letter) in rest.char_indices() {
         let starts = letter.is_ascii_digit()
             || (matches!(letter, '+' | '-')
-                && rest.get(index + 1..).is_some_and(|r| r.starts_with(|c: char| c.is_ascii_digit())));
-        if before_space && starts && index > 0 {
+                && rest.get(index + 1..).is_some_and(|r| r.trim_start().starts_with(|c: char| c.is_ascii_digit())));
+        // After a unit's letters a hyphen and a figure begin the next term: 12 ft-6 in.
+        let joined = matches!(letter, '-') && starts && !before_caret;
+        if (before_space || joined) && starts && index > 0 {
             return from + index;
         }
         before_space = letter.is_whitespace();
+        before_caret = letter == '^';
     }
     text.len()
 }
@@ -104,6 +126,8 @@ fn unit_end(text: &str, from: usize) -> usize {
 pub fn parse_unit(text: &str) -> Result<Unit, QuantityFault> {
     let mut factors: Vec<(Atom, i8)> = Vec::new();
     let mut below = false;
+    // Whether a factor must follow, since an operator stands before.
+    let mut wanting: Option<usize> = None;
     let mut rest = text;
     while let Some(letter) = rest.chars().next() {
         let at = text.len() - rest.len();
@@ -112,13 +136,24 @@ pub fn parse_unit(text: &str) -> Result<Unit, QuantityFault> {
                 return Err(fault(at..at + 1, "a second slash in a unit", "one slash divides by everything behind it"));
             }
             below = true;
+            if wanting.is_some() || at == 0 {
+                return Err(stray(letter, at));
+            }
+            wanting = Some(at);
             rest = rest.get(1..).unwrap_or_default();
-        } else if letter.is_whitespace() || matches!(letter, '*' | '·' | '-') {
+        } else if letter.is_whitespace() {
+            rest = rest.get(letter.len_utf8()..).unwrap_or_default();
+        } else if matches!(letter, '*' | '·' | '-') {
+            if wanting.is_some() || factors.is_empty() {
+                return Err(stray(letter, at));
+            }
+            wanting = Some(at);
             rest = rest.get(letter.len_utf8()..).unwrap_or_default();
         } else if letter == '1' && at == 0 && rest.trim_start_matches('1').trim_start().starts_with('/') {
             rest = rest.get(1..).unwrap_or_default();
         } else {
-            let length = rest.find(|c: char| !c.is_alphabetic()).unwrap_or(rest.len()).max(letter.len_utf8());
+            let part = |c: char| c.is_alphanumeric() || matches!(c, '²' | '³' | '⁴');
+            let length = rest.find(|c: char| !part(c)).unwrap_or(rest.len()).max(letter.len_utf8());
             let word = rest.get(..length).unwrap_or_default();
             let atom = Unit::known(word).ok_or_else(|| unknown(word, at))?;
             rest = rest.get(length..).unwrap_or_default();
@@ -137,18 +172,45 @@ pub fn parse_unit(text: &str) -> Result<Unit, QuantityFault> {
                 }
                 None => 1,
             };
+            wanting = None;
             factors.push((atom, if below { -power } else { power }));
+            if factors.iter().map(|(_, power)| u32::from(power.unsigned_abs())).sum::<u32>() > MOST_POWERS {
+                return Err(fault(0..text.len(), "no quantity has a unit of so many factors", "as in kN m^2"));
+            }
         }
     }
+    if let Some(at) = wanting {
+        let letter = text.get(at..).and_then(|rest| rest.chars().next()).unwrap_or('/');
+        return Err(stray(letter, at));
+    }
     Ok(Unit::of(factors))
+}
+
+/// More than any quantity of the trade has; keeps exponents far from overflow.
+const MOST_POWERS: u32 = 12;
+
+fn stray(letter: char, at: usize) -> QuantityFault {
+    let hint = "a sign of multiplication or division stands between two units, as in kN/m";
+    fault(at..at + letter.len_utf8(), format!("a stray \"{letter}\" in a unit"), hint)
 }
 
 fn unknown(word: &str, at: usize) -> QuantityFault {
     let names = || KNOWN.iter().chain([&PCI]).map(|atom| atom.text);
     let nearest =
         names().map(|name| (strsim::damerau_levenshtein(&name.to_lowercase(), &word.to_lowercase()), name)).min();
+    let digits = word.trim_end_matches(|c: char| c.is_ascii_digit() || matches!(c, '²' | '³' | '⁴'));
     let hint = match nearest {
-        Some((distance, name)) if distance <= 1 => format!("did you mean {name}?"),
+        _ if digits.len() < word.len() && Unit::known(digits).is_some() => {
+            let power = match word.get(digits.len()..) {
+                Some("²") => "2",
+                Some("³") => "3",
+                Some("⁴") => "4",
+                Some(power) => power,
+                None => "2",
+            };
+            format!("powers are written with a caret: {digits}^{power}")
+        }
+        Some((distance, name)) if distance <= 1 && word.len() > 1 => format!("did you mean {name}?"),
         _ => format!("known units: {}", names().collect::<Vec<_>>().join(" ")),
     };
     fault(at..at + word.len(), format!("unknown unit \"{word}\""), hint)
@@ -180,7 +242,19 @@ mod tests {
 
     #[test]
     fn faults_point_at_the_offending_part() {
-        assert_eq!(shown("8,5 kN"), "1..2 a decimal comma");
+        assert_eq!(shown("8,5 kN"), "1..2 a decimal comma, or a comma between thousands");
+        assert_eq!(shown("12 ft -6 in"), "[12|ft][6|in]");
+        assert_eq!(shown("12 ft - 6 in"), "[12|ft][6|in]");
+        assert_eq!(shown("12 ft-6 in"), "[12|ft][6|in]");
+        assert_eq!(shown("-1 ft 6 in"), "0..10 a negative sum can be read in two ways");
+        assert_eq!(shown("8 - kN/m"), "2..3 a stray \"-\" in a unit");
+        assert_eq!(shown("8 kN/m*"), "6..7 a stray \"*\" in a unit");
+        assert_eq!(shown("8 kN/"), "4..5 a stray \"/\" in a unit");
+        assert_eq!(shown("8 /m"), "2..3 a stray \"/\" in a unit");
+        assert_eq!(shown("1 000 N/m"), "0..9 a space inside a number");
+        assert_eq!(shown("1 cm4"), "2..5 unknown unit \"cm4\"");
+        assert_eq!(shown("1 pcf^9 pcf^9"), "2..13 no quantity has a unit of so many factors");
+        assert_eq!(shown("3 m^-1 kN"), "[3|kN/m]");
         assert_eq!(shown("8.5"), "0..3 a unit is missing behind the number");
         assert_eq!(shown("8.5 kM"), "4..6 unknown unit \"kM\"");
         assert_eq!(shown("NaN kN"), "0..3 a plain decimal number was expected");

@@ -28,7 +28,7 @@ macro_rules! embedded {
 }
 
 /// Every file, as it was when the program was built.
-const FILES: [(&str, &str); 13] = embedded![
+const FILES: [(&str, &str); 14] = embedded![
     "sheet.typ.j2",
     "parts.typ.j2",
     "answer.typ.j2",
@@ -40,6 +40,7 @@ const FILES: [(&str, &str); 13] = embedded![
     "checks.typ.j2",
     "trust.typ.j2",
     "annex.typ.j2",
+    "brief.typ.j2",
     "style.typ",
     "labels.toml",
 ];
@@ -66,6 +67,22 @@ impl Templates {
             }
             None => Err(Fault::UnknownTemplate { name: name.to_owned(), known: self.files.keys().cloned().collect() }),
         }
+    }
+
+    /// SHA-256 of the files that are not the embedded ones, with their names; `None` where all are.
+    pub fn own_hash(&self) -> Option<String> {
+        use sha2::{Digest, Sha256};
+        let own = FILES.iter().filter_map(|(name, text)| {
+            let now = self.files.get(*name)?;
+            (now != text).then_some((*name, now))
+        });
+        let mut hash = Sha256::new();
+        let mut any = false;
+        for (name, text) in own {
+            any = true;
+            hash.update(format!("{name} {}\n{text}", text.len()));
+        }
+        any.then(|| hash.finalize().iter().map(|byte| format!("{byte:02x}")).collect())
     }
 
     /// The labels as a tree of tables and words.

@@ -2,7 +2,7 @@
 
 use super::Build;
 use crate::deck::{Row, Value};
-use crate::member::{Case, Load, LoadKind, Nature, Place, Stretch};
+use crate::member::{Case, Declared, Load, LoadKind, Nature, Part, Place, Stretch};
 
 /// The kinds of load and the keys each takes.
 const KINDS: [(&str, &[&str]); 9] = [
@@ -37,7 +37,8 @@ impl Build<'_> {
                 }
                 for (index, item) in items.into_iter().enumerate().take(2_000) {
                     let path = format!("load {} of case {name}", index + 1);
-                    loads.extend(self.load(item, path));
+                    let part = Part::Load(self.member.cases.len(), loads.len());
+                    loads.extend(self.load(item, path, part));
                 }
             }
             self.member.cases.push(Case { name, title, nature: nature.unwrap_or(Nature::Other), loads });
@@ -51,16 +52,21 @@ impl Build<'_> {
         }
     }
 
-    fn load(&mut self, item: Value<'_>, path: String) -> Option<Load> {
+    fn load(&mut self, item: Value<'_>, path: String, part: Part) -> Option<Load> {
+        let said = path.clone();
         let row = self.reader.row(item, path)?;
         let words: Vec<(&str, usize)> = KINDS.iter().enumerate().map(|(index, (word, _))| (*word, index)).collect();
         let value = self.reader.required(&row, "kind")?;
         let index = self.reader.word(value, "kind", &words)?;
         let (_, own) = KINDS.get(index)?;
-        let keys: Vec<&str> = ["kind", "note", "source"].into_iter().chain(own.iter().copied()).collect();
+        let keys: Vec<&str> = ["kind", "note", "source", "confirm"].into_iter().chain(own.iter().copied()).collect();
         self.reader.known(&row, &keys);
         let note = self.reader.optional_text(&row, "note");
         let source = self.reader.optional_text(&row, "source");
+        if self.reader.flag(&row, "confirm") {
+            let source = source.clone().unwrap_or_default();
+            self.member.record.declared.push(Declared { part, words: said, source, confirm: true });
+        }
         let kind = self.kind(index, &row)?;
         Some(Load { kind, note, source })
     }

@@ -4,7 +4,7 @@ use toml::de::DeValue;
 
 use super::Build;
 use crate::deck::{Row, Value};
-use crate::member::{Combination, Factor, Limit, LoadKind, Measured, Purpose, Redundant};
+use crate::member::{Combination, Factor, Limit, LoadKind, Measured, Part, Purpose, Redundant, Weight};
 use crate::quantity::Decimal;
 
 const PURPOSES: [(&str, Purpose); 3] =
@@ -136,7 +136,10 @@ impl Build<'_> {
                 "measured",
                 "cantilever_length_factor",
                 "basis",
+                "source",
+                "confirm",
             ];
+            self.declare(&row, Part::Limit(self.member.limits.len()), format!("limit {name}"));
             self.reader.known(&row, &keys);
             let ratio = row.table.get("ratio").and_then(|value| self.reader.positive_number(value, "ratio"));
             let absolute = row
@@ -175,7 +178,8 @@ impl Build<'_> {
                     format!("limit {name} covers the cantilever {span_name} without cantilever_length_factor");
                 self.reader.fault(span.clone(), message, "2 where the code doubles a cantilever's length, 1 where it gives cantilevers their own ratio; or name the spans");
             }
-            if combinations.is_empty() || (spans.is_empty() && self.spans_known) {
+            let none = combinations.is_empty() && !self.member.combinations.is_empty();
+            if none || (spans.is_empty() && self.spans_known) {
                 self.reader.fault(
                     span,
                     format!("limit {name} applies to nothing"),
@@ -273,6 +277,43 @@ impl Build<'_> {
             self.member.cases.iter().flat_map(|case| &case.loads).any(|load| load.kind == LoadKind::SelfWeight);
         if !weighed && !self.member.cases.is_empty() {
             odd.push((root.span.clone(), "the member carries no self-weight".to_owned()));
+        }
+        if self.member.limits.is_empty() && !self.member.combinations.is_empty() {
+            odd.push((root.span.clone(), "the deck sets no limit, so that nothing is checked".to_owned()));
+        }
+        for limit in &self.member.limits {
+            if limit.ratio.is_some_and(|ratio| ratio.value < 10.0) {
+                let message = format!("limit {} allows more than a tenth of the length", limit.name);
+                odd.extend(span("limit", &limit.name).map(|span| (span, message)));
+            }
+        }
+        for section in &self.member.sections {
+            let e = section.modulus.value.si();
+            if e > 0.0 && !(1e9..=1e12).contains(&e) {
+                let message = format!("E of section {} lies outside 1 to 1000 GPa: mind the unit", section.name);
+                odd.extend(span("section", &section.name).map(|span| (span, message)));
+            }
+            let (i, depth) = (section.second_moment.value.si(), section.depth.as_ref().map(|d| d.value.si()));
+            let area = match &section.weight {
+                Some(Weight::Mass(area, _) | Weight::Specific(area, _)) => Some(area.value.si()),
+                _ => None,
+            };
+            // No part of a section is farther than its depth from its axis: I is at most A times depth squared over 4.
+            if let (Some(area), Some(depth)) = (area, depth)
+                && i > area * depth * depth / 4.0
+            {
+                let message = format!("I of section {} is greater than A and depth allow: mind the unit", section.name);
+                odd.extend(span("section", &section.name).map(|span| (span, message)));
+            }
+        }
+        for combination in &self.member.combinations {
+            let counts =
+                |case: &crate::member::Case| case.loads.iter().filter(|load| load.kind == LoadKind::SelfWeight).count();
+            let cases = self.member.cases.iter().zip(&combination.factors).filter(|(_, factor)| factor.value != 0.0);
+            if cases.map(|(case, _)| counts(case)).sum::<usize>() > 1 {
+                let message = format!("combination {} counts the self-weight more than once", combination.name);
+                odd.extend(span("combination", &combination.name).map(|span| (span, message)));
+            }
         }
         for (span, message) in odd {
             self.reader.warn(span, message, "");

@@ -4,7 +4,7 @@ use toml::de::DeValue;
 
 use super::Build;
 use crate::deck::{Row, Value};
-use crate::member::{Hinge, Hold, Place, Section, Segment, Span, Support, SupportKind, Taper, TaperLaw, Weight};
+use crate::member::{Hinge, Hold, Part, Place, Section, Segment, Span, Support, SupportKind, Taper, TaperLaw, Weight};
 use crate::quantity::{Decimal, Given, Physical};
 
 impl Build<'_> {
@@ -30,7 +30,8 @@ impl Build<'_> {
 
     pub(super) fn sections(&mut self, root: &Row<'_>) {
         for (name, _, row) in self.reader.named(root, "section") {
-            let keys = ["E", "I", "A", "density", "weight", "depth", "alpha", "G", "shear_area"];
+            let keys = ["E", "I", "A", "density", "weight", "depth", "alpha", "G", "shear_area", "source", "confirm"];
+            self.declare(&row, Part::Section(self.member.sections.len()), format!("section {name}"));
             self.reader.known(&row, &keys);
             let e = self
                 .reader
@@ -84,7 +85,8 @@ impl Build<'_> {
             if !row.table.contains_key("A") {
                 self.reader.fault(value.span(), "density without A gives no weight", "add the area A");
             }
-            return None;
+            // One mistake, one fault: the self-weight that needs it is not reported as well.
+            return Some(Weight::PerLength(Given { value: Default::default(), typed: pure_one() }));
         };
         let mass = typed.terms.iter().any(|term| term.unit.dimension().mass != 0);
         if mass {
@@ -104,12 +106,21 @@ impl Build<'_> {
         for (index, item) in items.into_iter().enumerate() {
             let path = format!("segment {}", index + 1);
             let Some(row) = self.reader.row(item, path) else { continue };
-            self.reader.known(&row, &["length", "section", "taper"]);
+            self.reader.known(&row, &["length", "section", "taper", "source", "confirm"]);
+            self.declare(&row, Part::Segment(self.member.segments.len()), format!("segment {}", index + 1));
             let section = self.reader.required(&row, "section").and_then(|value| self.section_named(value, "section"));
             let taper = row.table.get("taper").and_then(|value| self.taper(value, section));
             let Some(value) = self.reader.required(&row, "length") else { continue };
             let Some(length) = self.reader.quantity::<crate::quantity::Length>(value, "length") else { continue };
             let Some((size, _)) = self.reader.metres(value, "length") else { continue };
+            if self.member.segments.len() >= 20_000 {
+                self.reader.fault(value.span(), "more than 20,000 segments", "split the member");
+                return;
+            }
+            if size > Place::ZERO && !(1e-9..=1e6).contains(&size.x()) {
+                let hint = "a segment is between 1e-9 m and 1e6 m long";
+                self.reader.fault(value.span(), "the segment's length is beyond what can be computed", hint);
+            }
             if size <= Place::ZERO {
                 self.reader.fault(value.span(), "a segment must have a length greater than zero", "");
                 continue;
@@ -179,7 +190,7 @@ impl Build<'_> {
     pub(super) fn supports(&mut self, root: &Row<'_>) {
         let mut list = Vec::new();
         for (name, span, row) in self.reader.named(root, "support") {
-            self.reader.known(&row, &["at", "kind", "vertical", "rotation"]);
+            self.reader.known(&row, &["at", "kind", "vertical", "rotation", "source", "confirm"]);
             let at = self.reader.required(&row, "at").and_then(|value| self.place(value, "at"));
             let words = [
                 ("fixed", SupportKind::Fixed),
@@ -214,10 +225,20 @@ impl Build<'_> {
                 self.reader.fault(
                     span.clone(),
                     format!("support {name} holds nothing"),
-                    "give it a stiffness, or take it out",
+                    "give it vertical or rotation, as in vertical = \"12 kN/mm\", or take it out",
                 );
+            } else if kind == SupportKind::Elastic {
+                for key in ["vertical", "rotation"] {
+                    if !row.table.contains_key(key) {
+                        let message = format!("support {name} says nothing of {key}, which is taken as free");
+                        self.reader.warn(span.clone(), message, format!("write {key} = \"free\""));
+                    }
+                }
             }
-            list.push((span, Support { name, at, kind, vertical, rotation }));
+            let declared = self.member.record.declared.len();
+            self.declare(&row, Part::Support(0), format!("support {name}"));
+            let declared = self.member.record.declared.split_off(declared);
+            list.push((span, Support { name, at, kind, vertical, rotation }, declared));
         }
         if list.is_empty() && !root.table.contains_key("support") {
             self.reader.fault(
@@ -226,7 +247,7 @@ impl Build<'_> {
                 "add a table [support.NAME] with at and kind",
             );
         }
-        list.sort_by_key(|(_, support)| support.at);
+        list.sort_by_key(|(_, support, _)| support.at);
         for (left, right) in list.iter().zip(list.iter().skip(1)) {
             if left.1.at == right.1.at {
                 let message = format!("supports {} and {} stand at the same place", left.1.name, right.1.name);
@@ -236,11 +257,18 @@ impl Build<'_> {
                 );
             }
         }
-        (self.support_spans, self.member.supports) = list.into_iter().unzip();
+        for (index, (span, support, declared)) in list.into_iter().enumerate() {
+            self.support_spans.push(span);
+            self.member.supports.push(support);
+            let declared =
+                declared.into_iter().map(|one| crate::member::Declared { part: Part::Support(index), ..one });
+            self.member.record.declared.extend(declared);
+        }
     }
 
     fn hold<K: Physical + Copy>(&mut self, row: &Row<'_>, key: &str, si: impl Fn(K) -> f64) -> Hold<K> {
-        let Some(value) = self.reader.required(row, key) else { return Hold::Free };
+        // What an elastic support does not name it does not hold.
+        let Some(value) = row.table.get(key) else { return Hold::Free };
         match value.get_ref() {
             DeValue::String(word) if word == "rigid" => Hold::Rigid,
             DeValue::String(word) if word == "free" => Hold::Free,
@@ -315,9 +343,7 @@ impl Build<'_> {
 }
 
 fn placeholder(name: String) -> Section {
-    let typed = crate::quantity::Typed {
-        terms: vec![crate::quantity::Term { figure: Decimal::ONE, unit: crate::quantity::Unit::none() }],
-    };
+    let typed = pure_one();
     Section {
         name,
         modulus: Given { value: crate::quantity::Stress::default(), typed: typed.clone() },
@@ -326,5 +352,11 @@ fn placeholder(name: String) -> Section {
         depth: None,
         expansion: None,
         shear: None,
+    }
+}
+
+fn pure_one() -> crate::quantity::Typed {
+    crate::quantity::Typed {
+        terms: vec![crate::quantity::Term { figure: Decimal::ONE, unit: crate::quantity::Unit::none() }],
     }
 }

@@ -3,6 +3,7 @@
 mod actions;
 mod asked;
 mod geometry;
+mod record;
 
 use std::collections::BTreeMap;
 use std::ops::Range;
@@ -95,14 +96,28 @@ fn empty() -> Member {
         spans: Vec::new(),
         limits: Vec::new(),
         typed_places: BTreeMap::new(),
+        record: super::Record::default(),
         warnings: Vec::new(),
     }
 }
 
 impl Build<'_> {
     fn root(&mut self, root: &Row<'_>) {
-        let keys =
-            ["format", "title", "section", "segment", "support", "hinge", "member", "case", "combination", "limit"];
+        let keys = [
+            "format",
+            "title",
+            "section",
+            "segment",
+            "support",
+            "hinge",
+            "member",
+            "case",
+            "combination",
+            "limit",
+            "revision",
+            "assumption",
+            "sheet",
+        ];
         self.reader.known(root, &keys);
         self.format(root);
         self.title(root);
@@ -117,6 +132,9 @@ impl Build<'_> {
         self.cases(root);
         self.combinations(root);
         self.limits(root);
+        self.revisions(root);
+        self.assumptions(root);
+        self.sheet_table(root);
         self.oddities(root);
     }
 
@@ -155,14 +173,7 @@ impl Build<'_> {
             ..title
         };
         if let Some(value) = self.reader.required(&row, "date") {
-            match value.get_ref() {
-                DeValue::Datetime(stamp) if stamp.date.is_some() => {
-                    if let Some(date) = stamp.date {
-                        self.member.title.date = (date.year, date.month, date.day);
-                    }
-                }
-                _ => self.reader.fault(value.span(), "date must be a TOML date", "write it without quotes: 2026-11-30"),
-            }
+            self.member.title.date = self.date(value).unwrap_or_default();
         }
         if let Some(value) = row.table.get("units") {
             let words = [("SI", System::Si), ("US", System::Us)];

@@ -31,6 +31,8 @@ pub struct Findings {
     pub reactions: Vec<Table>,
     /// Diagrams, each with its heading.
     pub plots: Vec<(String, Plot)>,
+    /// How well the independent checks agree, a sentence or two.
+    pub agreement: String,
     /// Two columns of figures and their difference.
     pub crosschecks: Vec<Table>,
     /// The tabulated cases used, with their sources.
@@ -39,8 +41,12 @@ pub struct Findings {
     pub sources: Vec<String>,
     /// Assumptions beyond those that hold for every sheet.
     pub assumptions: Vec<String>,
+    /// Sources of the input, and what waits for confirmation.
+    pub declared: Option<Table>,
     /// Revisions.
     pub revisions: Option<Table>,
+    /// Events in the life of the calculation.
+    pub events: Option<Table>,
     /// The program, its version, the figures carried.
     pub program: Vec<String>,
     /// Name and hash of every file that belongs to the sheet.
@@ -68,6 +74,8 @@ pub struct Parts<'a> {
     pub deck: &'a str,
     /// The labels.
     pub labels: &'a Labels,
+    /// Whether the short form is wanted.
+    pub brief: bool,
 }
 
 impl Model {
@@ -79,6 +87,7 @@ impl Model {
         let mut gallery = Gallery::default();
         let (member, labels, found) = (parts.member, parts.labels, parts.findings);
         let mut model = Self {
+            brief: parts.brief,
             document: document(member),
             running: running(member, labels)?,
             answer: answer(parts, &mut gallery)?,
@@ -111,7 +120,13 @@ impl Model {
         let given = self.given.limits.iter_mut().chain(&mut self.given.inputs).chain([&mut self.given.combinations]);
         let steps = self.chapters.iter_mut().flat_map(|chapter| &mut chapter.steps).flat_map(|step| &mut step.tables);
         let sums = self.sums.tables.iter_mut().chain(&mut self.sums.reactions);
-        let trust = self.trust.crosschecks.iter_mut().chain(&mut self.trust.revisions).chain(&mut self.trust.hashes);
+        let trust = self
+            .trust
+            .crosschecks
+            .iter_mut()
+            .chain(&mut self.trust.revisions)
+            .chain(&mut self.trust.events)
+            .chain(&mut self.trust.hashes);
         given.chain(&mut self.method.cases).chain(steps).chain(sums).chain(&mut self.checks.table).chain(trust)
     }
 }
@@ -177,6 +192,7 @@ fn answer(parts: &Parts<'_>, gallery: &mut Gallery) -> Result<Answer, Fault> {
         fails: found.fails,
         uplift: found.uplift.clone(),
         unconfirmed: found.unconfirmed.clone(),
+        purpose: labels.get("answer.purpose_text")?.to_owned(),
         not_covered: labels.list("not_covered")?,
         member: Some(gallery.hang("", figure::elevation(parts.member, parts.words, figure::COLUMN))),
         signatures,
@@ -203,12 +219,14 @@ fn trust(parts: &Parts<'_>) -> Result<Trust, Fault> {
         program.push(labels.get("trust.unsettled")?.to_owned());
     }
     Ok(Trust {
+        agreement: found.agreement.clone(),
         crosschecks: found.crosschecks.clone(),
         assumptions,
         cautions: labels.list("cautions")?,
         deference: labels.list("deference")?,
         sources: found.sources.clone(),
         revisions: found.revisions.clone(),
+        events: found.events.clone(),
         program,
         hashes: hashes(parts)?,
     })

@@ -12,6 +12,7 @@ use crate::sheet::{Fault, page, typeset};
 pub fn given(parts: &Parts<'_>, gallery: &mut Gallery) -> Result<Given, Fault> {
     let (member, labels) = (parts.member, parts.labels);
     let inputs = [
+        parts.findings.declared.clone().unwrap_or_else(|| Table::new("", "", Vec::new())),
         sections(member, labels)?,
         segments(member, labels)?,
         supports(member, labels)?,

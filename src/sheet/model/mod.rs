@@ -25,6 +25,8 @@ use crate::figure::Drawing;
 /// A whole sheet.
 #[derive(Clone, Debug, Serialize)]
 pub struct Model {
+    /// Whether the short form is wanted: answer, figures, reactions, checks and crosschecks.
+    pub brief: bool,
     /// What the file says about itself.
     pub document: Document,
     /// What stands at the head and foot of every page.
@@ -117,6 +119,8 @@ pub struct Answer {
     pub uplift: Vec<String>,
     /// Assumptions and values that wait for confirmation; may be empty.
     pub unconfirmed: Vec<String>,
+    /// What the calculation is for, and by what it is judged; a sentence or two.
+    pub purpose: String,
     /// What the sheet does not cover.
     pub not_covered: Vec<String>,
     /// The member to scale.
@@ -183,6 +187,8 @@ pub struct Checks {
 /// Why the figures can be trusted, and how far.
 #[derive(Clone, Debug, Serialize)]
 pub struct Trust {
+    /// How well the independent checks agree, a sentence or two; may be empty.
+    pub agreement: String,
     /// Two columns of figures and their difference.
     pub crosschecks: Vec<Table>,
     /// What was assumed.
@@ -195,6 +201,8 @@ pub struct Trust {
     pub sources: Vec<String>,
     /// Revisions.
     pub revisions: Option<Table>,
+    /// Events in the life of the calculation.
+    pub events: Option<Table>,
     /// The program, its version, the figures carried.
     pub program: Vec<String>,
     /// Hashes of the attachments.
