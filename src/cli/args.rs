@@ -56,6 +56,25 @@ pub enum Command {
         #[arg(long, value_name = "STATION")]
         at: Vec<String>,
     },
+    /// Take deck and results out of a sheet.
+    #[command(after_help = "Example: proofspan extract intake-beam.pdf intake")]
+    Extract {
+        /// The sheet.
+        sheet: PathBuf,
+        /// The folder to put them in; existing files are left alone.
+        folder: PathBuf,
+    },
+    /// Prove a sheet from itself: solve its deck anew, compare the results, make the sheet again and compare its bytes.
+    #[command(
+        after_help = "Example: proofspan verify intake-beam.pdf\n\nExit status: 0 it holds, 1 could not be done, 2 no sheet of this program, 3 something was changed."
+    )]
+    Verify {
+        /// The sheet.
+        sheet: PathBuf,
+        /// The folder of the office's own templates that the sheet was made with.
+        #[arg(long, value_name = "DIR")]
+        templates: Option<PathBuf>,
+    },
     /// Write a commented starter deck that runs as it stands.
     #[command(after_help = "Example: proofspan new beam.toml")]
     New {

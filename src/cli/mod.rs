@@ -1,10 +1,12 @@
 //! The command line: one thin file a command.
 
 mod args;
+mod extract;
 mod new;
 mod output;
 mod sheet;
 mod solve;
+mod verify;
 mod write;
 
 use std::process::ExitCode;
@@ -53,6 +55,8 @@ pub fn run() -> Outcome {
             sheet::run(&deck, output, &sheet::Said { paper, detail, templates, without_attachments })
         }
         Command::Solve { deck, json, working, at } => solve::run(&deck, json, working, &at),
+        Command::Extract { sheet, folder } => extract::run(&sheet, &folder),
+        Command::Verify { sheet, templates } => verify::run(&sheet, templates.as_deref()),
         Command::New { file } => new::run(&file),
     }
 }
