@@ -1,6 +1,7 @@
 //! The one integration test binary.
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::indexing_slicing, clippy::disallowed_methods)]
 
+mod archive;
 mod cli;
 mod faults;
 mod figure;

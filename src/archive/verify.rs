@@ -84,7 +84,8 @@ fn recompute(
         }
     };
     if results.get("deck_sha256").and_then(Value::as_str) != Some(calculation.deck_sha256.as_str()) {
-        report.breaks("the attached results belong to another deck: the hash they carry is not that of the attached one");
+        report
+            .breaks("the attached results belong to another deck: the hash they carry is not that of the attached one");
     }
     let working = match calculation.working() {
         Ok(working) => working,

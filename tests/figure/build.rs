@@ -121,6 +121,7 @@ pub fn member(
         spans: Vec::new(),
         limits: Vec::new(),
         typed_places: std::collections::BTreeMap::new(),
+        record: proofspan::member::Record::default(),
         warnings: Vec::new(),
     }
 }

@@ -132,6 +132,7 @@ fn composed(member: &Member, working: &Working) -> Model {
         file: "intake.toml",
         deck: super::sample::DECK,
         labels: &labels,
+        brief: false,
     })
     .unwrap_or_else(|fault| panic!("{fault}"))
 }

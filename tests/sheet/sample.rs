@@ -156,6 +156,7 @@ pub fn model() -> Model {
         list
     };
     Model {
+        brief: false,
         document: Document {
             title: "TPH-014 Intake beam B3".to_owned(),
             author: "A. N. Other".to_owned(),
@@ -181,6 +182,7 @@ pub fn model() -> Model {
             ],
             fails: false,
             uplift: texts(&["Support B: net uplift of 12.4 kN in combination C4; hold-down required."]),
+            purpose: "To justify this member.".to_owned(),
             unconfirmed: texts(&["Settlement of support B, 6 mm: geotechnical report outstanding."]),
             not_covered: texts(&[
                 "Lateral-torsional and local buckling, web bearing, connections.",
@@ -248,6 +250,8 @@ pub fn model() -> Model {
             )),
         },
         trust: Trust {
+            agreement: "Both methods agree.".to_owned(),
+            events: None,
             crosschecks: vec![reactions()],
             assumptions: texts(&[
                 "Euler–Bernoulli bending, small deflections, linear material.",
