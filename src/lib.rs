@@ -16,4 +16,5 @@ pub mod calculation;
 pub mod figure;
 pub mod sheet;
 pub mod issue;
+pub mod review;
 pub mod cli;
