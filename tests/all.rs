@@ -4,6 +4,7 @@
 mod cli;
 mod faults;
 mod figure;
+mod mistakes;
 mod published;
 mod random;
 mod sheet;

@@ -85,8 +85,43 @@ pub(super) fn mistakes(member: &Member) -> Vec<Mistake> {
             found.factors(&mut list);
             found.shapes(&mut list);
         }
+        patterns(member, case, &mut list);
     }
     list
+}
+
+/// Loads of one intensity over some spans, laid over every span.
+fn patterns(member: &Member, case: usize, list: &mut Vec<Mistake>) {
+    let edge = |place: Place| member.spans.iter().any(|span| span.from == place || span.to == place);
+    let whole = Stretch { from: Place::ZERO, to: member.end() };
+    let loads = member.cases.get(case).map_or(&[][..], |case| &case.loads);
+    let spread = |kind: &LoadKind| match kind {
+        LoadKind::Uniform { over, .. } | LoadKind::Area { over, .. }
+            if *over != whole && edge(over.from) && edge(over.to) =>
+        {
+            let mut whole_kind = kind.clone();
+            if let LoadKind::Uniform { over, .. } | LoadKind::Area { over, .. } = &mut whole_kind {
+                *over = whole;
+            }
+            Some(whole_kind)
+        }
+        _ => None,
+    };
+    let mut done: Vec<LoadKind> = Vec::new();
+    for (load, first) in loads.iter().enumerate() {
+        let Some(kind) = spread(&first.kind).filter(|kind| !done.contains(kind)) else { continue };
+        done.push(kind.clone());
+        let alike = loads.iter().enumerate().filter(|(_, other)| spread(&other.kind).as_ref() == Some(&kind));
+        let edits: Vec<LoadEdit> = alike
+            .map(|(other, _)| {
+                let kinds = if other == load { vec![kind.clone()] } else { Vec::new() };
+                LoadEdit { case, load: other, instead: Instead::Loads(kinds) }
+            })
+            .collect();
+        let words = format!("the {} laid over every span instead of some", words::load(member, case, &first.kind));
+        let place = words::where_load(member, case, load);
+        list.push(Mistake::new("pattern-ignored", place, words, Change::Loads(edits)));
+    }
 }
 
 /// A load and where it stands.
@@ -196,7 +231,7 @@ impl Found<'_> {
         }
     }
 
-    /// A load over a part: cut off at a support that it runs across, carried on over one where it ends, laid over every span.
+    /// A load over a part: cut off at a support that it runs across, carried on over one where it ends.
     fn ends(&self, list: &mut Vec<Mistake>, load: &str, over: Stretch, kind: &dyn Fn(Stretch) -> LoadKind) {
         let end = self.member.end();
         for support in self.member.supports.iter().filter(|support| support.holds_deflection()) {
@@ -221,12 +256,6 @@ impl Found<'_> {
                 let words = format!("the {load} carried on over support {}", support.name);
                 self.push(list, "load-carried-over-end", words, Instead::Loads(vec![kind(part)]));
             }
-        }
-        let edge = |place: Place| self.member.spans.iter().any(|span| span.from == place || span.to == place);
-        let whole = Stretch { from: Place::ZERO, to: end };
-        if over != whole && edge(over.from) && edge(over.to) && self.member.spans.len() > 1 {
-            let words = format!("the {load} laid over every span instead of some");
-            self.push(list, "pattern-ignored", words, Instead::Loads(vec![kind(whole)]));
         }
     }
 

@@ -132,3 +132,8 @@ impl Catalogue {
 pub fn weak_axis(member: &Member, section: Option<usize>, ratio: f64) -> Option<Member> {
     stiffness::divided(member, section, ratio)
 }
+
+/// The member with every span between supports simply supported; `None` where that changes nothing or leaves a mechanism.
+pub fn simple_spans(member: &Member) -> Option<Member> {
+    supports::simple_spans(member)
+}
