@@ -1,7 +1,8 @@
 //! Questions that a claim answers, and their answers on any solved member.
 
+use crate::analysis::action::Action;
 use crate::analysis::extreme::span_ends;
-use crate::analysis::{Analysis, Field, Solution, Spot, Values};
+use crate::analysis::{Analysis, Field, Solution, Values};
 use crate::member::{Measured, Member, Place, Redundant, Span};
 use crate::verdict;
 
@@ -244,33 +245,65 @@ fn extreme(field: &Field<'_>, span: &Span, along: Along, max: bool, measured: Me
     let mut best = f64::NEG_INFINITY;
     let chord = along == Along::Deflection && measured == Measured::Chord;
     let (base, slope) = if chord { line(field, span) } else { (0.0, 0.0) };
-    let value = |spot: Spot, side: Side| {
-        let x = field.model.pieces.get(spot.piece).map_or(0.0, |piece| piece.from.beyond(span.from) + spot.x);
-        sign * (pick(&field.inside(spot.piece, spot.x), along, side) - base - slope * x)
-    };
     for (index, piece) in field.model.pieces.iter().enumerate() {
         if piece.from < span.from || piece.to > span.to {
             continue;
         }
-        let count = 64;
-        let at = |step: f64| Spot { piece: index, x: piece.length * step / f64::from(count), ..Spot::default() };
-        let inner = |step: f64| value(at(step), Side::Left).max(value(at(step), Side::Right));
-        best = best.max(value(at(0.0), Side::Right)).max(value(at(f64::from(count)), Side::Left));
-        for step in 1..count {
-            let middle = f64::from(step);
-            let here = inner(middle);
-            best = best.max(here);
-            if here >= value(at(middle - 1.0), Side::Right) && here >= value(at(middle + 1.0), Side::Left) {
-                let (mut low, mut high) = (middle - 1.0, middle + 1.0);
-                for _ in 0..80 {
-                    let (a, b) = (low + (high - low) * 0.382, low + (high - low) * 0.618);
-                    if inner(a) < inner(b) { low = a } else { high = b }
+        let offset = piece.from.beyond(span.from);
+        let value =
+            |x: f64, side: Side| sign * (pick(&field.inside(index, x), along, side) - base - slope * (offset + x));
+        let ends = breaks(field, index, piece.length);
+        for (from, to) in ends.iter().zip(ends.iter().skip(1)) {
+            let at = |step: u32| from + (to - from) * f64::from(step) / f64::from(STEPS);
+            let inner = |x: f64| value(x, if x > *from { Side::Left } else { Side::Right });
+            let values: Vec<f64> = (0..=STEPS).map(|step| inner(at(step))).collect();
+            best = values.iter().copied().fold(best, f64::max);
+            let low = |index: usize| values.get(index).copied().unwrap_or(f64::NEG_INFINITY);
+            for step in 0..STEPS {
+                // Between two points whose outer neighbours both lie lower something higher may stand.
+                let here = step as usize;
+                let (left, right) = (low(here), low(here + 1));
+                let rising = here == 0 || low(here - 1) <= left;
+                let falling = low(here + 2) <= right;
+                if rising && falling {
+                    best = best.max(golden(at(step), at(step + 1), inner));
                 }
-                best = best.max(inner((low + high) / 2.0));
             }
         }
     }
     sign * best
+}
+
+/// How many steps a stretch is looked at in.
+const STEPS: u32 = 24;
+
+/// Places on a piece where a load begins or ends, and its own ends.
+fn breaks(field: &Field<'_>, piece: usize, length: f64) -> Vec<f64> {
+    let mut ends = vec![0.0, length];
+    for action in field.actions_on(piece) {
+        match *action {
+            Action::Force { a, .. } | Action::Couple { a, .. } => ends.push(a),
+            Action::Spread { a, c, .. } | Action::Gradient { a, c, .. } => ends.extend([a, a + c]),
+        }
+    }
+    ends.retain(|end| (0.0..=length).contains(end));
+    ends.sort_by(f64::total_cmp);
+    ends.dedup_by(|right, left| *right - *left <= 1e-12 * length);
+    if let Some(last) = ends.last_mut() {
+        *last = length;
+    }
+    ends
+}
+
+/// The greatest value between two places, by golden section.
+fn golden(from: f64, to: f64, value: impl Fn(f64) -> f64) -> f64 {
+    const SHARE: f64 = 0.618_033_988_749_894_9;
+    let (mut low, mut high) = (from, to);
+    for _ in 0..60 {
+        let (a, b) = (high - SHARE * (high - low), low + SHARE * (high - low));
+        if value(a) < value(b) { low = a } else { high = b }
+    }
+    value((low + high) / 2.0)
 }
 
 fn checks(

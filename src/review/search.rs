@@ -7,7 +7,7 @@
 mod board;
 mod curve;
 pub mod engine;
-mod fit;
+pub mod fit;
 mod gauge;
 mod items;
 mod rank;

@@ -76,6 +76,8 @@ pub fn evidence(questions: &[Question], own: &Vector, claimed: &Vector) -> Vec<E
     let each = questions.iter().zip(own.iter().zip(claimed));
     each.filter_map(|(question, (own, claimed))| {
         let (own, claimed) = ((*own)?, three((*claimed)?));
+        // Nobody writes rounding down.
+        let claimed = if claimed.abs() < 1e-9 * own.abs() { 0.0 } else { claimed };
         let tolerance = tolerance(claimed);
         let differs = (own - claimed).abs() > tolerance;
         Some(Evidence { question: question.clone(), claimed, tolerance, differs })

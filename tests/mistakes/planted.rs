@@ -114,6 +114,15 @@ fn a_single_mistake_is_found() {
             if !hit {
                 let first = findings.explanations.first().map(|first| (&first.mistakes, &first.wheres));
                 println!("{}: {planted:?} not first but {first:?}; {differing} differ", bench.name);
+                println!("   {claimed:?} {:?}", {
+                    let mut list = Vec::new();
+                    engine.singles(|other, value| {
+                        if other == hypothesis {
+                            list = (0..4).map(value).collect()
+                        }
+                    });
+                    list
+                });
             }
             if differing < 3 {
                 assert!(findings.remark.is_some(), "{planted:?}");
@@ -145,6 +154,13 @@ fn a_pair_of_mistakes_is_found() {
                 all.push((hypothesis, written(&engine, &hypothesis, value)));
             }
         });
+        let doubles = engine.doubles();
+        for (first, second, vector) in doubles {
+            if dice.roll() < 8.0 / doubles.len() as f64 {
+                let structures = [Some(*first), Some(*second)];
+                all.push((Hypothesis { structures, ..Hypothesis::default() }, vector.clone()));
+            }
+        }
         for (hypothesis, claimed) in all {
             let evidence = evidence(&engine.questions, &own, &claimed);
             // One mistake of the two may leave no trace in four figures; two traces are the least a pair needs.

@@ -76,6 +76,11 @@ fn check(row: &str, engine: &Engine<'_>, name: &str, place: &str, printed: [(f64
 }
 
 const H: f64 = 0.0005;
+/// Rows 12, 13, 16 and 24 were rounded twice, to four decimals and then to three (6.533 47 to 6.5335 to 6.534).
+fn twice(values: [f64; 4]) -> [(f64, f64); 4] {
+    values.map(|value| (value, H + H / 10.0))
+}
+
 const NONE: (f64, f64) = (f64::NAN, 0.0);
 
 #[test]
@@ -88,7 +93,7 @@ fn the_table_of_wrong_assumptions_is_reproduced_to_its_printed_digits() {
         assert!((engine.figure(claim).unwrap() - own).abs() <= near, "{own}");
     }
     let h = |values: [f64; 4]| values.map(|value| (value, H));
-    let rows: [(&str, &str, &str, [(f64, f64); 4]); 19] = [
+    let rows: [(&str, &str, &str, [(f64, f64); 4]); 17] = [
         ("1", "one-stiffness-of-strong", "", h([41.181, -99.417, 5.214, 9.291])),
         ("2", "one-stiffness-of-weak", "", h([43.847, -83.417, 9.285, 6.729])),
         ("3", "stiffness-averaged", "", h([42.514, -91.417, 6.377, 8.559])),
@@ -100,8 +105,6 @@ fn the_table_of_wrong_assumptions_is_reproduced_to_its_printed_digits() {
         ("9", "settlement-ten-times", "", h([5.553, -313.180, 25.254, 112.129])),
         ("10", "self-weight-omitted", "", h([36.704, -107.996, 6.169, 8.957])),
         ("11", "self-weight-doubled", "", h([41.771, -114.154, 6.445, 8.775])),
-        ("13", "load-carried-over-end", "case Q", h([55.669, -103.614, 5.797, 10.488])),
-        ("16", "point-read-as-uniform", "case Q", h([39.501, -139.496, 6.722, 8.622])),
         ("17", "uniform-read-as-total", "case Q", h([23.695, -69.331, 4.292, 11.268])),
         ("18", "fixed-end-as-pin", "support A", h([57.750, 0.0, 15.679, 1.577])),
         ("19", "support-ignored", "support B", h([0.0, -346.500, 28.378, 129.154])),
@@ -112,7 +115,9 @@ fn the_table_of_wrong_assumptions_is_reproduced_to_its_printed_digits() {
     for (row, name, place, printed) in rows {
         check(row, &engine, name, place, printed);
     }
-    check("24", &engine, "length-digit-slip", "segment 3", h([36.773, -112.766, 6.423, 8.155]));
+    check("13", &engine, "load-carried-over-end", "case Q", twice([55.669, -103.614, 5.797, 10.488]));
+    check("16", &engine, "point-read-as-uniform", "case Q", twice([39.501, -139.496, 6.722, 8.622]));
+    check("24", &engine, "length-digit-slip", "segment 3", twice([36.773, -112.766, 6.423, 8.155]));
     let coarse = [(118.563, H), (-829.624, H), (428.4, 0.05), (-415.5, 0.05)];
     check("25", &engine, "feet-read-as-metres", "", coarse);
     check("26", &engine, "kips-read-as-kilonewtons", "", h([5.920, -42.378, 3.050, 10.887]));
@@ -128,7 +133,7 @@ fn rows_that_need_their_loads_arranged_otherwise() {
     let (member, analysis) = solved(&base(PLAIN));
     let engine = Engine::new(&member, &analysis, ask("C")).unwrap();
     let h = |values: [f64; 4]| values.map(|value| (value, H));
-    check("12", &engine, "load-cut-at-support", "case G", h([31.935, -114.390, 6.534, 8.145]));
+    check("12", &engine, "load-cut-at-support", "case G", twice([31.935, -114.390, 6.534, 8.145]));
     // Row 21 is E = 200 for 210 GPa.
     let cases = format!("[case.G]\nnature = \"permanent\"\nloads = [{PLAIN}, {LIVE}, {COUPLE}, {SINKS}]\n");
     let only = "[combination.C]\npurpose = \"serviceability\"\nfactors = { G = 1.0 }\n";

@@ -3,7 +3,7 @@
 use std::collections::BTreeMap;
 
 use crate::analysis::stability;
-use crate::member::{LoadKind, Member, Place};
+use crate::member::{LoadKind, Member, Place, Section, Segment};
 use crate::quantity::{Decimal, Given, Length, Physical, Term, Typed, Unit};
 
 /// Where the places of a member went.
@@ -153,6 +153,19 @@ pub fn move_load(kind: &mut LoadKind, moves: &Moves) {
     }
 }
 
+/// Whether a taper changes nothing but what a taper may change: I, weight, depth and shear area.
+fn even(member: &Member, segment: &Segment) -> bool {
+    let Some(taper) = segment.taper else { return true };
+    let ends = member.sections.get(segment.section).zip(member.sections.get(taper.to));
+    ends.is_some_and(|(left, right)| {
+        let expansion = |section: &Section| section.expansion.as_ref().map(|given| given.value);
+        left.modulus.value == right.modulus.value
+            && expansion(left) == expansion(right)
+            && left.shear.is_some() == right.shear.is_some()
+            && left.weight.is_some() == right.weight.is_some()
+    })
+}
+
 /// The member where it is stable and lawful; its choice of redundants is given up where it no longer serves.
 pub fn sound(mut member: Member) -> Option<Member> {
     let end = member.end();
@@ -169,7 +182,10 @@ pub fn sound(mut member: Member) -> Option<Member> {
             LoadKind::Point { at, .. } | LoadKind::Couple { at, .. } => inside(*at),
             LoadKind::SelfWeight | LoadKind::Settlement { .. } | LoadKind::Rotation { .. } => true,
         });
-    if !lawful || stability::mechanism(&member).is_some() {
+    if !lawful
+        || !member.segments.iter().all(|segment| even(&member, segment))
+        || stability::mechanism(&member).is_some()
+    {
         return None;
     }
     if member.redundants.as_ref().is_some_and(|chosen| stability::check_choice(&member, chosen).is_err()) {

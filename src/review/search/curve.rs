@@ -34,7 +34,7 @@ pub struct Curve {
 
 /// Points of a stretch of constant section (what runs there is of the fifth degree at most), and of a taper.
 const POINTS: usize = 7;
-const TAPER_POINTS: usize = 17;
+const TAPER_POINTS: usize = 33;
 
 /// Chebyshev points of the second kind on [0, 1].
 fn point(index: usize, count: usize) -> f64 {
@@ -140,15 +140,14 @@ impl Shape {
         let mut peak = best;
         for (first, count) in &self.stretches {
             let part = values.get(*first..first + count).unwrap_or_default();
-            let mut highest = (0, f64::NEG_INFINITY);
+            let places = if *count == POINTS { &self.places } else { &self.taper_places };
+            let at = |index: usize| part.get(index).map_or(f64::NEG_INFINITY, |value| sign * value);
             for (index, value) in part.iter().enumerate() {
-                if sign * value > highest.1 {
-                    highest = (index, sign * value);
+                let value = sign * value;
+                let before = index.checked_sub(1).map_or(f64::NEG_INFINITY, at);
+                if value >= near && best > least && value >= before && value >= at(index + 1) {
+                    peak = peak.max(refined(part, places, index, sign));
                 }
-            }
-            if highest.1 >= near && best > least {
-                let places = if *count == POINTS { &self.places } else { &self.taper_places };
-                peak = peak.max(refined(part, places, highest.0, sign));
             }
         }
         sign * peak

@@ -19,6 +19,8 @@ pub struct Fit {
 /// The claims, in the order in which they are looked at, and how many may be missed.
 pub struct Target<'e> {
     evidence: &'e [Evidence],
+    /// By claim, what is rounding: a hair of the checker's own figure.
+    hairs: Vec<f64>,
     order: Vec<usize>,
     /// Claims that differ.
     pub differing: usize,
@@ -36,7 +38,9 @@ impl<'e> Target<'e> {
         let differs = |claim: usize| evidence.get(claim).is_some_and(|claim| claim.differs);
         order.sort_by_key(|claim| (!engine.quick(*claim), !differs(*claim)));
         let differing = order.iter().filter(|claim| differs(**claim)).count();
-        Self { differing, agreeing: order.len() - differing, order, evidence }
+        let hair = |claim: usize| 1e-9 * engine.figure(claim).map_or(0.0, f64::abs);
+        let hairs = (0..evidence.len()).map(hair).collect();
+        Self { differing, agreeing: order.len() - differing, order, evidence, hairs }
     }
 
     /// How many differing claims a hypothesis may miss: one in six.
@@ -56,8 +60,9 @@ impl<'e> Target<'e> {
         for claim in &self.order {
             let known = self.evidence.get(*claim)?;
             let off = value(*claim).map(|value| (value - known.claimed).abs());
-            // A hair is allowed for a claim that stands exactly on the edge.
-            match off.filter(|off| *off <= known.tolerance * (1.0 + 1e-9) + 1e-12 * known.claimed.abs()) {
+            // A claim may stand exactly on the edge, and a figure that should be nought may be rounding.
+            let hair = self.hairs.get(*claim).copied().unwrap_or_default();
+            match off.filter(|off| *off <= known.tolerance + hair) {
                 Some(off) => {
                     fit.explains += usize::from(known.differs);
                     fit.keeps += usize::from(!known.differs);
@@ -84,7 +89,7 @@ impl<'e> Target<'e> {
         self.order.iter().all(|claim| {
             let tolerance = self.evidence.get(*claim).map_or(0.0, |claim| claim.tolerance);
             match (a.get(*claim).copied().flatten(), b.get(*claim).copied().flatten()) {
-                (Some(a), Some(b)) => (a - b).abs() <= tolerance.max(1e-9 * a.abs()),
+                (Some(a), Some(b)) => (a - b).abs() <= tolerance + self.hairs.get(*claim).copied().unwrap_or_default(),
                 (None, None) => true,
                 _ => false,
             }

@@ -35,7 +35,7 @@ impl Found {
 impl Engine<'_> {
     /// Searches with the claims in the order of the engine's questions.
     pub fn findings(&self, evidence: &[Evidence]) -> Findings {
-        let target = Target::new(evidence, self);
+        let target = self.target(evidence);
         if target.differing == 0 {
             return Findings::default();
         }
@@ -75,6 +75,11 @@ impl Engine<'_> {
         let remark = self.remark(&target, &named, fits, chance);
         let explanations = named.iter().map(|one| self.explanation(&target, one, &named)).collect();
         Findings { explanations, remark, tried }
+    }
+
+    /// The claims as the search looks at them.
+    pub fn target<'e>(&self, evidence: &'e [Evidence]) -> Target<'e> {
+        Target::new(evidence, self)
     }
 
     /// The checker's own figure for a claim.
@@ -146,7 +151,8 @@ impl Engine<'_> {
             let logs: Vec<f64> = (0..=steps).map(|i| low + (high - low) * f64::from(i) / f64::from(steps)).collect();
             let vectors: Vec<Option<Vector>> = logs.iter().map(|log| at(*log)).collect();
             tried += vectors.len();
-            for claim in target.differing_claims().take(2) {
+            // Some claims hardly feel the ratio: each is tried as the one that fixes it.
+            for claim in target.differing_claims().take(6) {
                 let Some(claimed) = evidence.get(claim).map(|claim| claim.claimed) else { continue };
                 let value = |vector: &Option<Vector>| vector.as_ref().and_then(|v| v.get(claim).copied().flatten());
                 let pairs = logs.iter().zip(&vectors).zip(logs.iter().zip(&vectors).skip(1));
@@ -156,7 +162,7 @@ impl Engine<'_> {
                         continue;
                     }
                     let (mut from, mut to, mut a) = (*from, *to, a);
-                    for _ in 0..30 {
+                    for _ in 0..18 {
                         let middle = (from + to) / 2.0;
                         let Some(here) = value(&at(middle)) else { break };
                         if (a - claimed) * (here - claimed) > 0.0 { (from, a) = (middle, here) } else { to = middle }
