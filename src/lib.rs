@@ -13,6 +13,7 @@ pub mod verdict;
 pub mod working;
 pub mod results;
 pub mod calculation;
+pub mod review;
 pub mod figure;
 pub mod sheet;
 pub mod issue;

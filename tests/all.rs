@@ -5,6 +5,7 @@ mod archive;
 mod cli;
 mod faults;
 mod figure;
+mod mistakes;
 mod published;
 mod random;
 mod sheet;
