@@ -1,5 +1,16 @@
 //! A colleague's figures against the member: which agree, which differ, and which mistakes would reproduce the latter.
 
 pub mod ask;
+mod claim;
+mod compare;
+mod json;
 pub mod mistake;
+mod read;
 pub mod search;
+mod starter;
+
+pub use claim::{Claim, Claims, Reviewed, Reviewer};
+pub use compare::{Compared, Status, compare, evidence};
+pub use json::json;
+pub use read::{deck_of, read};
+pub use starter::starter;
