@@ -56,6 +56,36 @@ pub enum Command {
         #[arg(long, value_name = "STATION")]
         at: Vec<String>,
     },
+    /// Compare somebody's figures with one's own model, and say which mistakes would reproduce the differing ones.
+    #[command(
+        after_help = "Example: proofspan review examples/intake-claims.toml\n         proofspan review --sheet theirs.pdf --deck mine.toml\n\nExit status: 0 all agree, 1 could not be done, 2 the input is at fault, 3 a claim differs."
+    )]
+    Review {
+        /// The file of claims.
+        #[arg(required_unless_present = "sheet", conflicts_with = "sheet")]
+        claims: Option<PathBuf>,
+        /// Take the claims from the results attached to a sheet instead.
+        #[arg(long, value_name = "PDF", requires = "deck")]
+        sheet: Option<PathBuf>,
+        /// One's own deck, for --sheet.
+        #[arg(long, requires = "sheet")]
+        deck: Option<PathBuf>,
+        /// Where to write the review; beside the claims, with the ending pdf, where nothing is said.
+        #[arg(short, long)]
+        output: Option<PathBuf>,
+        /// Print one JSON object in SI units instead, and write no PDF unless -o names one.
+        #[arg(long)]
+        json: bool,
+    },
+    /// Write a file of claims to fill in, with every quantity that a deck reports.
+    #[command(after_help = "Example: proofspan claims examples/intake-beam.toml -o claims.toml")]
+    Claims {
+        /// The deck.
+        deck: PathBuf,
+        /// The file to write, an existing one is left alone; where nothing is said it is printed.
+        #[arg(short, long)]
+        output: Option<PathBuf>,
+    },
     /// Take deck and results out of a sheet.
     #[command(after_help = "Example: proofspan extract intake-beam.pdf intake")]
     Extract {

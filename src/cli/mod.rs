@@ -1,9 +1,11 @@
 //! The command line: one thin file a command.
 
 mod args;
+mod claims;
 mod extract;
 mod new;
 mod output;
+mod review;
 mod sheet;
 mod solve;
 mod verify;
@@ -55,6 +57,10 @@ pub fn run() -> Outcome {
             sheet::run(&deck, output, &sheet::Said { paper, detail, templates, without_attachments })
         }
         Command::Solve { deck, json, working, at } => solve::run(&deck, json, working, &at),
+        Command::Review { claims, sheet, deck, output, json } => {
+            review::run(&review::Said { claims, sheet, deck, output, json })
+        }
+        Command::Claims { deck, output } => claims::run(&deck, output.as_deref()),
         Command::Extract { sheet, folder } => extract::run(&sheet, &folder),
         Command::Verify { sheet, templates } => verify::run(&sheet, templates.as_deref()),
         Command::New { file } => new::run(&file),

@@ -2,6 +2,7 @@
 
 mod document;
 mod plots;
+pub mod review;
 
 use sha2::{Digest, Sha256};
 
@@ -99,7 +100,11 @@ pub fn print(
         brief: wishes.brief,
     })?;
     let attachments = if wishes.attach {
-        Attachments { deck: Some(deck.as_bytes().to_vec()), results: Some(results.into_bytes()) }
+        Attachments {
+            deck: Some(deck.as_bytes().to_vec()),
+            results: Some(results.into_bytes()),
+            ..Attachments::default()
+        }
     } else {
         Attachments::default()
     };

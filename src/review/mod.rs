@@ -8,9 +8,11 @@ pub mod mistake;
 mod read;
 pub mod search;
 mod starter;
+mod theirs;
 
 pub use claim::{Claim, Claims, Reviewed, Reviewer};
 pub use compare::{Compared, Status, compare, evidence};
 pub use json::json;
 pub use read::{deck_of, read};
 pub use starter::starter;
+pub use theirs::from_results;

@@ -137,7 +137,11 @@ impl Build<'_, '_> {
         {
             return Some((date.year, date.month, date.day));
         }
-        self.reader.fault(value.span(), "date must be a TOML date without a time", "write it without quotes: 2026-11-30");
+        self.reader.fault(
+            value.span(),
+            "date must be a TOML date without a time",
+            "write it without quotes: 2026-11-30",
+        );
         None
     }
 
@@ -218,7 +222,11 @@ impl Build<'_, '_> {
                 self.named(value, "combination", names).map(Of::Combination)
             }
             (Some(value), Some(_)) => {
-                self.reader.fault(value.span(), format!("{} names both a case and a combination", row.path), "one of them");
+                self.reader.fault(
+                    value.span(),
+                    format!("{} names both a case and a combination", row.path),
+                    "one of them",
+                );
                 None
             }
             (None, None) => {
@@ -405,7 +413,8 @@ impl Build<'_, '_> {
         let Some(value) = row.table.get("tolerance") else { return Some(half.max(0.005 * si.abs())) };
         let text = self.reader.text(value, "tolerance")?;
         if let Some(number) = text.trim().strip_suffix('%') {
-            let share = Decimal::parse(number.trim()).map(Decimal::to_f64).filter(|share| (0.0..=100.0).contains(share));
+            let share =
+                Decimal::parse(number.trim()).map(Decimal::to_f64).filter(|share| (0.0..=100.0).contains(share));
             if let Some(share) = share {
                 return Some(share / 100.0 * si.abs());
             }

@@ -54,7 +54,8 @@ pub fn starter(member: &Member, analysis: &Analysis, deck: &str) -> String {
         }
     }
     for limit in &member.limits {
-        for (combination, span) in limit.combinations.iter().flat_map(|c| limit.spans.iter().map(move |span| (*c, *span)))
+        for (combination, span) in
+            limit.combinations.iter().flat_map(|c| limit.spans.iter().map(move |span| (*c, *span)))
         {
             let (Some(combination), Some(span)) = (member.combinations.get(combination), member.spans.get(span)) else {
                 continue;

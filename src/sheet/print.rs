@@ -53,6 +53,8 @@ pub struct Attachments {
     pub deck: Option<Vec<u8>>,
     /// The results: `results.json`.
     pub results: Option<Vec<u8>>,
+    /// Of a review, the claims: `claims.toml`.
+    pub claims: Option<Vec<u8>>,
 }
 
 /// A finished sheet.
@@ -206,12 +208,21 @@ fn attached(attachments: &Attachments) -> Vec<Attachment> {
         media: "application/json",
         description: "The results that this sheet shows, unrounded, with the working",
     });
-    deck.into_iter().chain(results).collect()
+    let claims = attachments.claims.as_ref().map(|_| Attachment {
+        name: "claims.toml",
+        input: "claims",
+        relationship: "source",
+        media: "application/toml",
+        description: "The claims that were reviewed, byte for byte",
+    });
+    deck.into_iter().chain(results).chain(claims).collect()
 }
 
 fn inputs(attachments: &Attachments) -> Dict {
     let mut dict = Dict::new();
-    for (name, bytes) in [("deck", &attachments.deck), ("results", &attachments.results)] {
+    for (name, bytes) in
+        [("deck", &attachments.deck), ("results", &attachments.results), ("claims", &attachments.claims)]
+    {
         if let Some(bytes) = bytes {
             dict.insert(name.into(), Data::Bytes(Bytes::new(bytes.clone())));
         }

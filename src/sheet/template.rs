@@ -28,7 +28,7 @@ macro_rules! embedded {
 }
 
 /// Every file, as it was when the program was built.
-const FILES: [(&str, &str); 14] = embedded![
+const FILES: [(&str, &str); 15] = embedded![
     "sheet.typ.j2",
     "parts.typ.j2",
     "answer.typ.j2",
@@ -41,6 +41,7 @@ const FILES: [(&str, &str); 14] = embedded![
     "trust.typ.j2",
     "annex.typ.j2",
     "brief.typ.j2",
+    "review.typ.j2",
     "style.typ",
     "labels.toml",
 ];

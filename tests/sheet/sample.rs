@@ -157,6 +157,7 @@ pub fn model() -> Model {
     };
     Model {
         brief: false,
+        review: None,
         document: Document {
             title: "TPH-014 Intake beam B3".to_owned(),
             author: "A. N. Other".to_owned(),

@@ -88,6 +88,7 @@ impl Model {
         let (member, labels, found) = (parts.member, parts.labels, parts.findings);
         let mut model = Self {
             brief: parts.brief,
+            review: None,
             document: document(member),
             running: running(member, labels)?,
             answer: answer(parts, &mut gallery)?,

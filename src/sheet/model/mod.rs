@@ -8,12 +8,14 @@ mod compose;
 mod given;
 mod grid;
 mod line;
+mod reviewing;
 mod rows;
 mod step;
 mod table;
 
 pub use compose::{Findings, Parts};
 pub use line::{Line, Setting};
+pub use reviewing::{Explained, Reviewing};
 pub use step::{Chapter, Step, chapters};
 pub use table::{Align, Cell, Column, Row, Table, aligned};
 
@@ -27,6 +29,8 @@ use crate::figure::Drawing;
 pub struct Model {
     /// Whether the short form is wanted: answer, figures, reactions, checks and crosschecks.
     pub brief: bool,
+    /// A review of somebody's figures, where this is one; it then stands in the place of the sheet.
+    pub review: Option<Reviewing>,
     /// What the file says about itself.
     pub document: Document,
     /// What stands at the head and foot of every page.
