@@ -8,6 +8,7 @@ mod figure;
 mod mistakes;
 mod published;
 mod random;
+mod review;
 mod sheet;
 mod support;
 mod working;
