@@ -6,8 +6,8 @@ use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
 use crate::diagnostic::Diagnostic;
-use crate::member::{Factor, Place};
 use crate::quantity::{Decimal, Dimension, Given, Physical, Typed, parse_quantity};
+use crate::quantity::{Factor, Place};
 
 /// A value with its place.
 pub type Value<'a> = &'a Spanned<DeValue<'a>>;

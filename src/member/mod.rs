@@ -6,11 +6,10 @@
 
 pub mod build;
 mod load;
-mod place;
 mod record;
 
+pub use crate::quantity::{Factor, Place};
 pub use load::{Case, Load, LoadKind, Nature, Stretch};
-pub use place::Place;
 pub use record::{Assumption, Declared, Part, Record, Revision, SheetWishes};
 
 use std::collections::BTreeMap;
@@ -275,15 +274,6 @@ pub struct Combination {
     pub purpose: Purpose,
     /// One factor for each case, in the order of [`Member::cases`]; zero where the deck names none.
     pub factors: Vec<Factor>,
-}
-
-/// A factor as typed.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Factor {
-    /// Its value.
-    pub value: f64,
-    /// As typed; zero for a case the combination does not name.
-    pub figure: crate::quantity::Decimal,
 }
 
 /// What a combination is for.

@@ -3,10 +3,12 @@
 
 mod decimal;
 mod parse;
+mod place;
 mod unit;
 
 pub use decimal::Decimal;
 pub use parse::{QuantityFault, parse_quantity, parse_unit};
+pub use place::Place;
 pub use unit::{Atom, Dimension, KNOWN, PCI, Unit};
 
 /// Standard gravity as weight per mass, N/kg (9.80665 m/s², ISO 80000-3).
@@ -102,4 +104,13 @@ quantities! {
     TemperatureDifference: 0 0 0 1 0;
     /// A strain per temperature, 1/K.
     Expansion: 0 0 0 -1 0;
+}
+
+/// A factor as typed.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Factor {
+    /// Its value.
+    pub value: f64,
+    /// As typed; zero for a case the combination does not name.
+    pub figure: crate::quantity::Decimal,
 }
