@@ -11,6 +11,7 @@ pub mod fit;
 mod gauge;
 mod items;
 mod rank;
+mod ratio;
 
 use crate::analysis::Analysis;
 use crate::member::Member;

@@ -54,6 +54,8 @@ pub struct Engine<'m> {
     read_weighted: Vec<(usize, usize, Board)>,
     weighted: Vec<(usize, Board)>,
     doubles: OnceCell<Vec<(usize, usize, Vector)>>,
+    /// Sections about their weak axis under a row of ratios; solved when first asked for.
+    pub(super) ratios: OnceCell<Vec<super::ratio::Row>>,
 }
 
 /// The most pairs of structural changes that are solved; each is a solution of its own.
@@ -131,6 +133,7 @@ impl<'m> Engine<'m> {
             items,
             questions,
             doubles: OnceCell::new(),
+            ratios: OnceCell::new(),
         })
     }
 
