@@ -28,9 +28,6 @@ fn questions(member: &Member, of: &str, asked: &[&str]) -> Vec<Question> {
 }
 
 /// The greatest difference of both routes, relative to the greatest figure that the same question has anywhere.
-///
-/// The greatest and least values along a taper are read off a polynomial in the search and count a hundredth: they are right
-/// to 1e-7 on the strongest tapers, and are found exactly before a hypothesis is named.
 fn difference(
     engine: &Engine<'_>,
     hypothesis: &Hypothesis,
@@ -43,13 +40,7 @@ fn difference(
         match (value(claim), exact) {
             (Some(sum), Some(exact)) => {
                 let scale = exact.abs().max(scales[claim]);
-                let tapered = engine.member.segments.iter().any(|segment| segment.taper.is_some());
-                let peak = matches!(
-                    engine.questions[claim].ask,
-                    Ask::Extreme { .. } | Ask::Utilisation { .. } | Ask::Verdict { .. }
-                );
-                let share = if tapered && peak { 0.01 } else { 1.0 };
-                greatest = greatest.max(share * (sum - exact).abs() / scale);
+                greatest = greatest.max((sum - exact).abs() / scale);
             }
             (None, None) => {}
             (sum, exact) => panic!("claim {claim}: {sum:?} {exact:?} {:?}", engine.questions[claim]),
