@@ -207,3 +207,34 @@ fn the_list_of_names_is_whole() {
     ];
     assert!(fixed.iter().all(|name| NAMES.iter().any(|(known, _)| known == name)));
 }
+
+/// On a very long member changes of the structure are solved with the loads as they are: the same singles, fewer pairs.
+#[test]
+fn a_long_member_is_searched_by_singles() {
+    let sample = &samples()[5];
+    let (member, analysis) = solved(&sample.deck);
+    let asked = || questions(&member, sample.of, &sample.asked);
+    let whole = Engine::new(&member, &analysis, asked()).unwrap();
+    let short = Engine::within(&member, &analysis, asked(), 0).unwrap();
+    let scales = scales(&whole);
+    let all = |engine: &Engine<'_>| {
+        let mut list: Vec<(Hypothesis, Vec<Option<f64>>)> = Vec::new();
+        engine.singles(|hypothesis, value| list.push((hypothesis, (0..scales.len()).map(value).collect())));
+        list
+    };
+    let (whole_list, short_list) = (all(&whole), all(&short));
+    assert_eq!(whole_list.len(), short_list.len());
+    for ((hypothesis, one), (other, two)) in whole_list.iter().zip(&short_list) {
+        assert_eq!(hypothesis, other);
+        for ((one, two), scale) in one.iter().zip(two).zip(&scales) {
+            assert_eq!(one.is_some(), two.is_some());
+            assert!((one.unwrap_or(0.0) - two.unwrap_or(0.0)).abs() <= 1e-9 * scale.max(one.unwrap_or(0.0).abs()));
+        }
+    }
+    let pairs = |engine: &Engine<'_>| {
+        let mut count = 0;
+        engine.pairs(|hypothesis, _| count += usize::from(hypothesis.structures[0].is_some()));
+        count
+    };
+    assert!(pairs(&whole) > 100 && pairs(&short) == 0);
+}

@@ -164,7 +164,10 @@ impl Engine<'_> {
                 "None of the mistakes tried, single or in pairs, would reproduce the claims that differ.".to_owned(),
             );
             if self.doubles_left_out() {
-                parts.push("Pairs of two changes to the structure were left out: there are too many.".to_owned());
+                parts.push(
+                    "Pairs of two changes to the structure were left out: there are too many on this member."
+                        .to_owned(),
+                );
             }
             return Some(parts.join(" "));
         }
