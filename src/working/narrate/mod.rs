@@ -3,6 +3,7 @@
 mod acts;
 mod cases;
 mod checks;
+mod closing;
 mod factored;
 mod given;
 mod place;
