@@ -10,6 +10,7 @@ mod mistakes;
 mod oracle;
 mod published;
 mod random;
+mod reference;
 mod review;
 mod sheet;
 mod support;
