@@ -11,6 +11,7 @@ mod mistakes;
 mod oracle;
 mod published;
 mod random;
+mod reference;
 mod review;
 mod sheet;
 mod support;
