@@ -3,10 +3,12 @@
 
 mod decimal;
 mod parse;
+mod parse_unit;
 mod unit;
 
 pub use decimal::Decimal;
-pub use parse::{QuantityFault, parse_quantity, parse_unit};
+pub use parse::{QuantityFault, parse_placed, parse_quantity};
+pub use parse_unit::parse_unit;
 pub use unit::{Atom, Dimension, KNOWN, PCI, Unit};
 
 /// Standard gravity as weight per mass, N/kg (9.80665 m/s², ISO 80000-3).
