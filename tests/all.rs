@@ -3,6 +3,7 @@
 
 mod archive;
 mod cli;
+mod deck;
 mod faults;
 mod figure;
 mod mistakes;

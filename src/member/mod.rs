@@ -6,12 +6,11 @@
 
 pub mod build;
 mod load;
-mod place;
 mod record;
 
+pub use crate::quantity::{Factor, Place};
 pub use load::{Case, Load, LoadKind, Nature, Stretch};
-pub use place::Place;
-pub use record::{Assumption, Declared, Part, Record, Revision, SheetWishes};
+pub use record::{Assumption, Decimals, Declared, Part, Record, Revision, SheetWishes};
 
 use std::collections::BTreeMap;
 
@@ -58,6 +57,11 @@ impl Member {
     /// The right end of the member; its left end is at zero.
     pub fn end(&self) -> Place {
         self.segments.last().map_or(Place::ZERO, |segment| segment.to)
+    }
+
+    /// A sentence for every value and assumption that waits for confirmation.
+    pub fn unconfirmed(&self) -> Vec<String> {
+        self.record.unconfirmed()
     }
 
     /// Degree of static indeterminacy: restraints held, less two equations of equilibrium, less one for each hinge.
@@ -275,15 +279,6 @@ pub struct Combination {
     pub purpose: Purpose,
     /// One factor for each case, in the order of [`Member::cases`]; zero where the deck names none.
     pub factors: Vec<Factor>,
-}
-
-/// A factor as typed.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Factor {
-    /// Its value.
-    pub value: f64,
-    /// As typed; zero for a case the combination does not name.
-    pub figure: crate::quantity::Decimal,
 }
 
 /// What a combination is for.

@@ -1,6 +1,6 @@
 //! Exact places along the member.
 
-use crate::quantity::Decimal;
+use super::Decimal;
 
 /// A place along the member: an exact decimal of metres from its left end.
 ///
