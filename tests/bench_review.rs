@@ -6,10 +6,44 @@ use std::time::Instant;
 use proofspan::analysis::solve;
 use proofspan::calculation;
 use proofspan::member::Measured;
-use proofspan::review::ask::{Along, Ask, Of, Question};
+use proofspan::review::ask::{Along, Ask, Of, Question, evaluate};
 use proofspan::review::search::{Engine, Evidence, explain};
 
+/// A member of many spans, stepped in each.
+fn long(spans: usize) -> String {
+    let mut text = String::from(
+        "format = 1\n[title]\nproject = \"p\"\nnumber = \"n\"\nsubject = \"s\"\nrevision = \"A\"\ndate = 2026-11-30\n\
+         [section.a]\nE = \"210 GPa\"\nI = \"8356 cm^4\"\nweight = \"0.42 kN/m\"\n\
+         [section.b]\nE = \"210 GPa\"\nI = \"16000 cm^4\"\nweight = \"0.6 kN/m\"\n[support.S0]\nat = \"0 m\"\nkind = \"pinned\"\n",
+    );
+    let mut loads = Vec::new();
+    for span in 0..spans {
+        text += "[[segment]]\nlength = \"3.5 m\"\nsection = \"a\"\n[[segment]]\nlength = \"1.5 m\"\nsection = \"b\"\n";
+        text += &format!("[support.S{}]\nat = \"{} m\"\nkind = \"roller\"\n", span + 1, 5 * (span + 1));
+        loads.push(format!("{{ kind = \"point\", p = \"{} kN\", at = \"{} m\" }}", 10 + span % 7, 5 * span + 2));
+    }
+    text += "[case.G]\nnature = \"permanent\"\nloads = [{ kind = \"self_weight\" }]\n";
+    text += &format!("[case.Q]\nnature = \"imposed\"\nloads = [{}]\n", loads.join(", "));
+    text + "[combination.U1]\npurpose = \"strength\"\nfactors = { G = 1.35, Q = 1.5 }\n"
+}
+
 fn main() {
+    for spans in [10, 40] {
+        let member = calculation::member(&long(spans)).unwrap();
+        let analysis = solve(&member).unwrap();
+        let of = Of::Combination("U1".to_owned());
+        let start = Instant::now();
+        let evidence: Vec<Evidence> = ["S1", "S2", "S3", "S4"]
+            .into_iter()
+            .map(|support| {
+                let question = Question { of: of.clone(), ask: Ask::Reaction { support: support.to_owned() } };
+                let claimed = 1.171 * evaluate(&question, &member, &analysis).unwrap();
+                Evidence { question, claimed, tolerance: 0.005 * claimed, differs: true }
+            })
+            .collect();
+        let findings = explain(&member, &analysis, &evidence);
+        println!("{spans} spans: a whole search, {} hypotheses, in {:.0?}", findings.tried, start.elapsed());
+    }
     let member = calculation::member(include_str!("../examples/gallery-girder.toml")).unwrap();
     let analysis = solve(&member).unwrap();
     let of = Of::Combination("U1".to_owned());

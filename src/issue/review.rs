@@ -79,7 +79,7 @@ pub fn print(review: &Reviewed<'_>, working: &Working) -> Result<Printed, sheet:
     model.document.title = format!("Review of {} {}", review.claims.reviewed.number, review.claims.reviewed.subject);
     model.running.subject = format!("Review of {}", review.claims.reviewed.number);
     model.running.prepared.clone_from(&review.claims.reviewer.name);
-    model.running.checked.clone_from(&review.claims.reviewer.name);
+    model.running.checked = String::new();
     model.running.number.clone_from(&title.number);
     let date = review.claims.reviewer.date;
     model.document.date = date;

@@ -66,6 +66,8 @@ pub fn compare(claim: &Claim, member: &Member, analysis: &Analysis) -> Compared 
         return not_comparable(reason);
     }
     let difference = claim.claimed - value;
+    // What is left of a figure that was only converted from its unit and back.
+    let difference = if difference.abs() <= 1e-14 * value.abs() { 0.0 } else { difference };
     let agrees = difference.abs() <= claim.tolerance * (1.0 + 1e-9);
     let relative = (value != 0.0 && !claim.verdict).then(|| difference / value);
     let remark = if agrees { own_digits(claim, value) } else { slip(claim, value) };

@@ -11,6 +11,7 @@ pub mod fit;
 mod gauge;
 mod items;
 mod rank;
+mod ratio;
 
 use crate::analysis::Analysis;
 use crate::member::Member;
@@ -71,6 +72,9 @@ pub fn explain(member: &Member, analysis: &Analysis, evidence: &[Evidence]) -> F
         return Findings::default();
     }
     let questions = evidence.iter().map(|claim| claim.question.clone()).collect();
-    let Some(engine) = Engine::new(member, analysis, questions) else { return Findings::default() };
+    let Some(engine) = Engine::new(member, analysis, questions) else {
+        let remark = "The member could not be solved load by load: no mistake was tried.".to_owned();
+        return Findings { remark: Some(remark), ..Findings::default() };
+    };
     engine.findings(evidence)
 }

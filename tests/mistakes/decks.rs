@@ -240,6 +240,21 @@ pub fn samples() -> Vec<Sample> {
             ],
         ),
     );
+    add(
+        "linear taper, a spring held by both movements, snow, a load that helps",
+        ["R A", "R B", "m A", "v 3"],
+        deck(
+            &[("3 m", "mid"), ("3 m", "mid")],
+            &[
+                ("A", "0 m", "kind = \"elastic\"\nvertical = \"9 kN/mm\"\nrotation = \"4 MN m/rad\""),
+                ("B", "end", ROLLER),
+            ],
+            "",
+            &[dead, ("Q", "snow", "{ kind = \"area\", q = \"1.9 kN/m^2\", width = \"3.5 m\" }")],
+        )
+        .replacen("section = \"mid\"", "section = \"mid\"\ntaper = { to = \"light\", law = \"linear\" }", 1)
+        .replace("G = 1.35", "G = 1.0"),
+    );
     let tapered = "[[segment]]\nlength = \"4.2 m\"\nsection = \"heavy\"\ntaper = { to = \"light\", law = \"cubic\" }\n";
     let text = deck(
         &[("2.6 m", "light")],

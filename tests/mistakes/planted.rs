@@ -114,15 +114,6 @@ fn a_single_mistake_is_found() {
             if !hit {
                 let first = findings.explanations.first().map(|first| (&first.mistakes, &first.wheres));
                 println!("{}: {planted:?} not first but {first:?}; {differing} differ", bench.name);
-                println!("   {claimed:?} {:?}", {
-                    let mut list = Vec::new();
-                    engine.singles(|other, value| {
-                        if other == hypothesis {
-                            list = (0..4).map(value).collect()
-                        }
-                    });
-                    list
-                });
             }
             if differing < 3 {
                 assert!(findings.remark.is_some(), "{planted:?}");
@@ -182,45 +173,50 @@ fn a_pair_of_mistakes_is_found() {
 #[test]
 fn random_wrong_claims_are_not_explained() {
     let mut dice = Dice(11);
-    let (mut rates, rounds) = (Vec::new(), 25);
-    for count in [3, 4, 5] {
-        let (mut tried, mut named, mut bare) = (0, 0, 0);
-        for bench in &benches() {
-            let (member, analysis) = solved(&bench.deck);
-            let mut questions = bench.questions.clone();
-            let span = member.spans.iter().find(|span| !span.is_cantilever()).unwrap();
-            let middle = (span.from.x() + span.to.x()) / 2.0;
-            questions.push(question(&questions[0].of, &format!("V {middle}")));
-            let engine = Engine::new(&member, &analysis, questions).unwrap();
-            let own = own(&engine);
+    let counts = [2, 3, 4, 5];
+    let rounds = 25;
+    let (mut tried, mut named, mut bare) = ([0_u32; 4], [0_u32; 4], [0_u32; 4]);
+    for bench in &benches() {
+        let (member, analysis) = solved(&bench.deck);
+        let mut questions = bench.questions.clone();
+        let span = member.spans.iter().find(|span| !span.is_cantilever()).unwrap();
+        let middle = (span.from.x() + span.to.x()) / 2.0;
+        questions.push(question(&questions[0].of, &format!("V {middle}")));
+        let engine = Engine::new(&member, &analysis, questions).unwrap();
+        let own = own(&engine);
+        for (kind, count) in counts.into_iter().enumerate() {
             for _ in 0..rounds {
-                let evidence: Vec<Evidence> = engine
-                    .questions
-                    .iter()
-                    .zip(&own)
-                    .enumerate()
+                let mut wrong = |index: usize, own: f64| {
+                    let off = (0.02 + 0.5 * dice.roll()) * if dice.roll() < 0.5 { -1.0 } else { 1.0 };
+                    // A claim that is left out is given as a figure that is none.
+                    if index < count { three(own * (1.0 + off)) } else { f64::NAN }
+                };
+                let each = engine.questions.iter().zip(&own).enumerate();
+                let evidence: Vec<Evidence> = each
                     .filter_map(|(index, (question, own))| {
-                        let own = (*own)?;
-                        let off = (0.02 + 0.5 * dice.roll()) * if dice.roll() < 0.5 { -1.0 } else { 1.0 };
-                        let claimed = three(own * (1.0 + off));
+                        let claimed = wrong(index, (*own)?);
                         let tolerance = tolerance(claimed);
-                        // Claims that are left out are given no weight by a figure that is not one.
-                        let claimed = if index < count { claimed } else { f64::NAN };
                         Some(Evidence { question: question.clone(), claimed, tolerance, differs: true })
                     })
                     .collect();
+                assert_eq!(evidence.len(), 5);
                 let findings = engine.findings(&evidence);
-                tried += 1;
-                named += usize::from(!findings.explanations.is_empty());
-                bare += usize::from(!findings.explanations.is_empty() && findings.remark.is_none());
-                assert!(!findings.explanations.is_empty() || findings.remark.is_some());
+                let empty = findings.explanations.is_empty();
+                tried[kind] += 1;
+                named[kind] += u32::from(!empty);
+                bare[kind] += u32::from(!empty && findings.remark.is_none());
+                assert!(!empty || findings.remark.is_some());
             }
         }
-        let rate = 100.0 * named as f64 / f64::from(tried);
-        println!("{count} random wrong claims: {named} of {tried} explained ({rate:.2} %), {bare} without a remark");
-        rates.push(rate);
     }
-    assert!(rates[2] < 2.0);
+    for (kind, count) in counts.into_iter().enumerate() {
+        let rate = 100.0 * f64::from(named[kind]) / f64::from(tried[kind]);
+        println!(
+            "{count} random wrong claims: {} of {} explained ({rate:.2} %), {} of them without a remark",
+            named[kind], tried[kind], bare[kind]
+        );
+        assert!(count < 5 || rate < 2.0);
+    }
 }
 
 #[test]

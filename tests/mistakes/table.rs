@@ -93,7 +93,7 @@ fn the_table_of_wrong_assumptions_is_reproduced_to_its_printed_digits() {
         assert!((engine.figure(claim).unwrap() - own).abs() <= near, "{own}");
     }
     let h = |values: [f64; 4]| values.map(|value| (value, H));
-    let rows: [(&str, &str, &str, [(f64, f64); 4]); 17] = [
+    let rows = [
         ("1", "one-stiffness-of-strong", "", h([41.181, -99.417, 5.214, 9.291])),
         ("2", "one-stiffness-of-weak", "", h([43.847, -83.417, 9.285, 6.729])),
         ("3", "stiffness-averaged", "", h([42.514, -91.417, 6.377, 8.559])),

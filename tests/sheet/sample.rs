@@ -277,7 +277,11 @@ pub fn model() -> Model {
 
 pub fn options() -> Options {
     Options {
-        attachments: Attachments { deck: Some(DECK.as_bytes().to_vec()), results: Some(b"{\"format\": 1}\n".to_vec()) },
+        attachments: Attachments {
+            deck: Some(DECK.as_bytes().to_vec()),
+            results: Some(b"{\"format\": 1}\n".to_vec()),
+            claims: None,
+        },
         ident: "0123456789abcdef".to_owned(),
         ..Options::default()
     }

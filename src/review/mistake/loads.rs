@@ -80,12 +80,18 @@ pub fn is_force(kind: &LoadKind) -> bool {
 pub(super) fn mistakes(member: &Member) -> Vec<Mistake> {
     let mut list = Vec::new();
     for (case, held) in member.cases.iter().enumerate() {
-        for (load, held) in held.loads.iter().enumerate() {
-            let found = Found { member, case, load, kind: &held.kind };
+        for (load, one) in held.loads.iter().enumerate() {
+            let found = Found { member, case, load, kind: &one.kind };
             found.factors(&mut list);
             found.shapes(&mut list);
         }
         patterns(member, case, &mut list);
+        if held.loads.len() > 1 {
+            let none = |load| LoadEdit { case, load, instead: Instead::Times(Decimal::ZERO) };
+            let edits = (0..held.loads.len()).map(none).collect();
+            let words = format!("leaving out case {}", held.name);
+            list.push(Mistake::new("case-omitted", format!("case {}", held.name), words, Change::Loads(edits)));
+        }
     }
     list
 }

@@ -7,6 +7,7 @@
 pub mod edit;
 mod geometry;
 pub mod loads;
+mod names;
 pub mod reading;
 mod shape;
 mod stiffness;
@@ -18,6 +19,7 @@ use std::fmt;
 
 pub use edit::Moves;
 pub use loads::{Instead, LoadEdit};
+pub use names::NAMES;
 pub use reading::Reading;
 pub use weights::Weights;
 

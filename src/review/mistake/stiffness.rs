@@ -131,8 +131,21 @@ fn swapped(member: &Member, list: &mut Vec<Mistake>) {
     for (index, a) in sections.iter().enumerate() {
         for b in sections.iter().skip(index + 1).filter(|b| differ(member, *a, **b)) {
             let (a, b) = (*a, *b);
-            let place = format!("section {} / section {}", name(member, a), name(member, b));
-            let words = format!("exchanging the stiffnesses of sections {} and {}", name(member, a), name(member, b));
+            // Where either has but one segment, the segments are named.
+            let (place, words) = match (only(member, a), only(member, b)) {
+                (Some(i), Some(j)) => {
+                    let (i, j) = (i.min(j) + 1, i.max(j) + 1);
+                    let place = format!("segment {i} / segment {j}");
+                    (place, format!("exchanging the stiffnesses of segments {i} and {j}"))
+                }
+                _ => {
+                    let (a, b) = (name(member, a), name(member, b));
+                    (
+                        format!("section {a} / section {b}"),
+                        format!("exchanging the stiffnesses of sections {a} and {b}"),
+                    )
+                }
+            };
             push(place.clone(), words.clone(), Box::new(move |member| exchanged_sections(member, a, b, false)));
             if heavy {
                 let place = format!("{place}, with their weights");
@@ -166,6 +179,16 @@ fn swapped(member: &Member, list: &mut Vec<Mistake>) {
             }
         }
     }
+}
+
+/// The only segment of a section, untapered.
+fn only(member: &Member, section: usize) -> Option<usize> {
+    let uses = |segment: &crate::member::Segment| {
+        segment.section == section || segment.taper.is_some_and(|taper| taper.to == section)
+    };
+    let mut all = member.segments.iter().enumerate().filter(|(_, segment)| uses(segment));
+    let (index, segment) = all.next()?;
+    (segment.taper.is_none() && all.next().is_none()).then_some(index)
 }
 
 /// Whether the two segments are the only ones of their sections.

@@ -53,6 +53,17 @@ impl Board {
         Self { lines }
     }
 
+    /// A board of figures that cannot be combined with anything.
+    pub fn fixed(vector: &[Option<f64>]) -> Self {
+        let line = |value: &Option<f64>| value.map_or(Line::Absent, Line::Fixed);
+        Self { lines: vector.iter().map(line).collect() }
+    }
+
+    /// Whether no claim's figure here depends on a load.
+    pub fn is_fixed(&self) -> bool {
+        self.lines.iter().all(|line| matches!(line, Line::Fixed(_) | Line::Absent))
+    }
+
     /// The figure of a claim under up to two mistakes about loads, which must not touch the same load.
     pub fn value(&self, claim: usize, first: Option<usize>, second: Option<usize>) -> Option<f64> {
         match self.lines.get(claim)? {

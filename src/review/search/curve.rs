@@ -6,8 +6,10 @@
 use std::rc::Rc;
 
 use crate::analysis::action::Action;
+use crate::analysis::model::Piece;
+use crate::analysis::stiffness::Stiffness;
 use crate::analysis::{Analysis, Field, Model};
-use crate::member::{Measured, Span};
+use crate::member::{Measured, Span, TaperLaw};
 use crate::review::ask::Along;
 
 /// Points of one span.
@@ -34,12 +36,32 @@ pub struct Curve {
 
 /// Points of a stretch of constant section (what runs there is of the fifth degree at most), and of a taper.
 const POINTS: usize = 7;
-const TAPER_POINTS: usize = 33;
+const TAPER_POINTS: usize = 21;
 
 /// Chebyshev points of the second kind on [0, 1].
 fn point(index: usize, count: usize) -> f64 {
     let last = count.saturating_sub(1).max(1) as f64;
     (1.0 - libm::cos(std::f64::consts::PI * index as f64 / last)) / 2.0
+}
+
+/// Where a share `t` of a stretch lies, from the piece's left end.
+///
+/// Along a taper what bends runs like logarithms and powers of what is linear in x (I, or its cube root): shares are those of
+/// its logarithm, in which all of that is smooth however strong the taper is.
+fn place(piece: &Piece, stretch: &Stretch, t: f64) -> f64 {
+    let share = match &piece.stiffness {
+        Stiffness::Constant { .. } => t,
+        Stiffness::Tapered(tapered) => {
+            let ratio = match tapered.law {
+                TaperLaw::Linear => tapered.ei1 / tapered.ei0,
+                TaperLaw::Cubic => tapered.root,
+            };
+            let at = |x: f64| 1.0 + (ratio - 1.0) * (tapered.offset + x) / tapered.length;
+            let growth = at(stretch.from + stretch.length) / at(stretch.from);
+            if (growth - 1.0).abs() < 1e-3 { t } else { (libm::pow(growth, t) - 1.0) / (growth - 1.0) }
+        }
+    };
+    stretch.from + stretch.length * share
 }
 
 /// A stretch of a piece without a jump inside: its piece, where it begins there, how long it is.
@@ -82,10 +104,8 @@ impl Curve {
             (0..analysis.cases.len()).filter_map(|case| Field::of_case(analysis, case)).collect();
         let list = stretches(model, &fields, span);
         let count = |stretch: &Stretch| {
-            let tapered = model
-                .pieces
-                .get(stretch.piece)
-                .is_some_and(|piece| matches!(piece.stiffness, crate::analysis::stiffness::Stiffness::Tapered(_)));
+            let tapered =
+                model.pieces.get(stretch.piece).is_some_and(|piece| matches!(piece.stiffness, Stiffness::Tapered(_)));
             if tapered { TAPER_POINTS } else { POINTS }
         };
         let mut first = 0;
@@ -103,11 +123,12 @@ impl Curve {
                     (0..*count).map(move |index| (stretch, index, *count)).collect::<Vec<_>>()
                 })
                 .map(|(stretch, index, count)| {
-                    let x = stretch.from + stretch.length * point(index, count);
+                    let Some(piece) = model.pieces.get(stretch.piece) else { return 0.0 };
+                    let x = place(piece, stretch, point(index, count));
                     let values = field.inside(stretch.piece, x);
                     let left = index + 1 == count;
                     let cut = if left { values.left } else { values.right };
-                    let beyond = model.pieces.get(stretch.piece).map_or(0.0, |piece| piece.from.beyond(span.from));
+                    let beyond = piece.from.beyond(span.from);
                     match along {
                         Along::Shear => cut.shear,
                         Along::Moment => cut.moment,
@@ -122,8 +143,9 @@ impl Curve {
         let places = |count: usize| (0..count).map(|index| point(index, count)).collect();
         let each = list.iter().zip(&ranges);
         let at = each.flat_map(|(stretch, (_, count))| {
-            let start = model.pieces.get(stretch.piece).map_or(0.0, |piece| piece.x);
-            (0..*count).map(move |index| start + stretch.from + stretch.length * point(index, *count))
+            let piece = model.pieces.get(stretch.piece);
+            (0..*count)
+                .map(move |index| piece.map_or(0.0, |piece| piece.x + place(piece, stretch, point(index, *count))))
         });
         let at = at.collect();
         let (places, taper_places) = (places(POINTS), places(TAPER_POINTS));
@@ -176,8 +198,8 @@ fn refined(part: &[f64], places: &[f64], index: usize, sign: f64) -> f64 {
     let golden = 0.618_033_988_749_894_9;
     let (mut a, mut b) = (high - golden * (high - low), low + golden * (high - low));
     let (mut at_a, mut at_b) = (at(a), at(b));
-    // The value at a flat top is right to the square of the place: 24 steps leave 1e-5 of the place.
-    for _ in 0..24 {
+    // The value at a flat top is right to the square of the place: 30 steps leave 1e-6 of the place.
+    for _ in 0..30 {
         if at_a > at_b {
             (high, b, at_b) = (b, a, at_a);
             a = high - golden * (high - low);

@@ -54,16 +54,26 @@ pub struct Engine<'m> {
     read_weighted: Vec<(usize, usize, Board)>,
     weighted: Vec<(usize, Board)>,
     doubles: OnceCell<Vec<(usize, usize, Vector)>>,
+    /// Sections about their weak axis under a row of ratios; solved when first asked for.
+    pub(super) ratios: OnceCell<Vec<super::ratio::Row>>,
 }
 
 /// The most pairs of structural changes that are solved; each is a solution of its own.
 const MOST_DOUBLES: usize = 6_000;
+/// Structural changes times loads times pieces: the most that is solved load by load (about a microsecond each).
+const MOST_WORK: usize = 3_000_000;
 /// The most structural changes that are combined with factors and readings.
 const MOST_SITES: usize = 400;
 
 impl<'m> Engine<'m> {
     /// Solves the member under every change that asks for it. `None` where the items cannot be solved.
     pub fn new(member: &'m Member, analysis: &'m Analysis, questions: Vec<Question>) -> Option<Self> {
+        Self::within(member, analysis, questions, MOST_WORK)
+    }
+
+    /// The same with another bound on the work (changes times loads times pieces) beyond which changes that ask for a new
+    /// solution are tried alone only.
+    pub fn within(member: &'m Member, analysis: &'m Analysis, questions: Vec<Question>, work: usize) -> Option<Self> {
         let catalogue = Catalogue::new(member);
         let items = Items::new(member, &catalogue.loads);
         let weigh = |change: Option<&Weights>| -> Vec<Rc<Vec<f64>>> {
@@ -101,8 +111,21 @@ impl<'m> Engine<'m> {
             changes.iter().enumerate().map(|(index, weights)| (index, bare(gauges, weights))).collect::<Vec<_>>()
         };
         let mut sites = Vec::new();
+        let heavy = catalogue.structures.len() * items.list.len() * analysis.model.pieces.len() > work;
         for (structure, mistake) in catalogue.structures.iter().enumerate() {
             let Some(change) = structural(mistake) else { continue };
+            if heavy {
+                // On a very long member each change is solved with the loads as they are, and left out of pairs.
+                let vector = (change.rewrite)(member).and_then(|changed| {
+                    let solved = analysis::solve(&changed)?;
+                    Some(answers(&questions, member, &changed, &solved, &[change.moves]))
+                });
+                if let Some(vector) = vector {
+                    let plain = Board::fixed(&vector);
+                    sites.push(Site { structure, read: Vec::new(), weighted: Vec::new(), plain });
+                }
+                continue;
+            }
             let Some(changed) = (change.rewrite)(&items.member) else { continue };
             let Some(solved) = analysis::solve(&changed) else { continue };
             let ground = Ground { member, analysis, changed: &changed, solved: &solved, moves: change.moves };
@@ -131,6 +154,7 @@ impl<'m> Engine<'m> {
             items,
             questions,
             doubles: OnceCell::new(),
+            ratios: OnceCell::new(),
         })
     }
 
@@ -167,6 +191,9 @@ impl<'m> Engine<'m> {
             }
         }
         let mut with_loads = |hypothesis: Hypothesis, board: &Board| {
+            if board.is_fixed() {
+                return;
+            }
             for load in 0..effects.len() {
                 let hypothesis = Hypothesis { loads: [Some(load), None], ..hypothesis };
                 visit(hypothesis, &|claim| board.value(claim, Some(load), None));
@@ -261,14 +288,8 @@ impl<'m> Engine<'m> {
     pub fn exact(&self, hypothesis: &Hypothesis) -> Option<(Member, Vector)> {
         let (member, moves) = self.rewritten(hypothesis)?;
         let analysis = analysis::solve(&member)?;
-        let answer = |question: &Question| {
-            if gone(question, self.member, &member) {
-                return Some(0.0);
-            }
-            let question = moves.iter().fold(question.clone(), |question, moves| moved(&question, moves));
-            evaluate(&question, &member, &analysis).ok()
-        };
-        Some((member.clone(), self.questions.iter().map(answer).collect()))
+        let vector = answers(&self.questions, self.member, &member, &analysis, &moves);
+        Some((member, vector))
     }
 
     /// The mistakes of a hypothesis.
@@ -284,6 +305,18 @@ impl<'m> Engine<'m> {
     pub fn quick(&self, claim: usize) -> bool {
         self.base.quick(claim)
     }
+}
+
+/// Answers on a rewritten member, solved in full.
+fn answers(questions: &[Question], before: &Member, after: &Member, analysis: &Analysis, moves: &[Moves]) -> Vector {
+    let answer = |question: &Question| {
+        if gone(question, before, after) {
+            return Some(0.0);
+        }
+        let question = moves.iter().fold(question.clone(), |question, moves| moved(&question, moves));
+        evaluate(&question, after, analysis).ok()
+    };
+    questions.iter().map(answer).collect()
 }
 
 fn structural(mistake: &Mistake) -> Option<&Structure> {

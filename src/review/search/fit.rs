@@ -84,6 +84,16 @@ impl<'e> Target<'e> {
         (fit.explains > 0).then_some(fit)
     }
 
+    /// Whether figures that are not exact yet come near enough to all claims to be worth a closer look.
+    pub fn about(&self, value: &dyn Fn(usize) -> Option<f64>) -> bool {
+        let far = |claim: &&usize| {
+            let known = self.evidence.get(**claim);
+            let off = known.zip(value(**claim)).map(|(known, value)| (value - known.claimed).abs() / known.tolerance);
+            off.is_none_or(|off| off > 10.0)
+        };
+        self.order.iter().filter(far).count() <= self.may_miss() + self.may_spoil()
+    }
+
     /// Whether two hypotheses give the same figures within the tolerances.
     pub fn coincide(&self, a: &[Option<f64>], b: &[Option<f64>]) -> bool {
         self.order.iter().all(|claim| {

@@ -3,10 +3,8 @@
 use super::engine::{Engine, Hypothesis, Vector};
 use super::fit::{Fit, Target};
 use super::{Evidence, Explanation, Findings};
-use crate::analysis;
 use crate::member::Member;
 use crate::review::ask::evaluate;
-use crate::review::mistake;
 
 /// The most explanations returned.
 const MOST: usize = 10;
@@ -50,7 +48,10 @@ impl Engine<'_> {
         };
         let mut chance = 0.0;
         if !whole(&found) && target.differing >= 2 {
-            tried += self.fitted(evidence, &target, &mut found);
+            tried += self.fitted(evidence, &target, |hypothesis, value| {
+                self.weigh(&target, hypothesis, value, 1, &mut found);
+            });
+            found.dedup_by(|a, b| a.hypothesis.ratio.is_some() && a.hypothesis == b.hypothesis);
         }
         if !whole(&found) && target.differing >= 2 {
             let before = tried;
@@ -136,56 +137,6 @@ impl Engine<'_> {
         *found = kept;
     }
 
-    /// A section about its weak axis where the ratio of both second moments is not known: one is sought that reproduces the
-    /// claims. It takes one claim more than otherwise, since one of them is spent on the ratio.
-    fn fitted(&self, evidence: &[Evidence], target: &Target<'_>, found: &mut Vec<Found>) -> usize {
-        if target.differing < 3 {
-            return 0;
-        }
-        let mut tried = 0;
-        let sections = (0..self.member.sections.len()).map(Some);
-        let all = (self.member.sections.len() > 1).then_some(None);
-        for section in sections.chain(all) {
-            let at = |log: f64| self.under(section, libm::exp(log));
-            let (low, high, steps) = (libm::log(3.0), libm::log(60.0), 24);
-            let logs: Vec<f64> = (0..=steps).map(|i| low + (high - low) * f64::from(i) / f64::from(steps)).collect();
-            let vectors: Vec<Option<Vector>> = logs.iter().map(|log| at(*log)).collect();
-            tried += vectors.len();
-            // Some claims hardly feel the ratio: each is tried as the one that fixes it.
-            for claim in target.differing_claims().take(6) {
-                let Some(claimed) = evidence.get(claim).map(|claim| claim.claimed) else { continue };
-                let value = |vector: &Option<Vector>| vector.as_ref().and_then(|v| v.get(claim).copied().flatten());
-                let pairs = logs.iter().zip(&vectors).zip(logs.iter().zip(&vectors).skip(1));
-                for ((from, a), (to, b)) in pairs {
-                    let (Some(a), Some(b)) = (value(a), value(b)) else { continue };
-                    if (a - claimed) * (b - claimed) > 0.0 || a == b {
-                        continue;
-                    }
-                    let (mut from, mut to, mut a) = (*from, *to, a);
-                    for _ in 0..18 {
-                        let middle = (from + to) / 2.0;
-                        let Some(here) = value(&at(middle)) else { break };
-                        if (a - claimed) * (here - claimed) > 0.0 { (from, a) = (middle, here) } else { to = middle }
-                    }
-                    let ratio = libm::round(libm::exp((from + to) / 2.0) * 1e3) / 1e3;
-                    let hypothesis = Hypothesis { ratio: Some((section, ratio)), ..Hypothesis::default() };
-                    if let Some(vector) = self.under(section, ratio) {
-                        let value = |claim: usize| vector.get(claim).copied().flatten();
-                        self.weigh(target, hypothesis, &value, 1, found);
-                    }
-                }
-            }
-        }
-        found.dedup_by(|a, b| a.hypothesis.ratio.is_some() && a.hypothesis == b.hypothesis);
-        tried
-    }
-
-    fn under(&self, section: Option<usize>, ratio: f64) -> Option<Vector> {
-        let member = mistake::weak_axis(self.member, section, ratio)?;
-        let analysis = analysis::solve(&member)?;
-        Some(self.questions.iter().map(|question| evaluate(question, &member, &analysis).ok()).collect())
-    }
-
     /// How many pairs would fit claims that are merely somewhere near: the share of single mistakes whose figure lies about
     /// each claim, claim by claim, times the number of pairs.
     fn chance(&self, evidence: &[Evidence], target: &Target<'_>, pairs: usize) -> f64 {
@@ -213,7 +164,10 @@ impl Engine<'_> {
                 "None of the mistakes tried, single or in pairs, would reproduce the claims that differ.".to_owned(),
             );
             if self.doubles_left_out() {
-                parts.push("Pairs of two changes to the structure were left out: there are too many.".to_owned());
+                parts.push(
+                    "Pairs of two changes to the structure were left out: there are too many on this member."
+                        .to_owned(),
+                );
             }
             return Some(parts.join(" "));
         }
