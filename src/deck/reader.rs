@@ -88,18 +88,27 @@ impl<'t> Reader<'t> {
         for key in row.table.keys() {
             let name = key.get_ref().as_ref();
             if !keys.contains(&name) {
-                if let Some(near) = nearest(name, keys.iter().copied()) {
-                    self.meant.insert((row.path.clone(), near.to_owned()));
-                }
-                let hint = suggest(name, keys.iter().copied(), "known keys");
+                // A longer name for what has a short one here: Emod, Iy, length_m.
+                let longer = keys.iter().copied().filter(|key| name.starts_with(key)).max_by_key(|key| key.len());
+                let near = nearest(name, keys.iter().copied()).or(longer);
+                let hint = match near {
+                    Some(near) => format!("did you mean {near}?"),
+                    None => suggest(name, keys.iter().copied(), "known keys"),
+                };
+                self.meant.extend(near.map(|near| (row.path.clone(), near.to_owned())));
                 self.fault(key.span(), format!("unknown key \"{}\" in {}", clip(name), row.path), hint);
             }
         }
     }
 
+    /// Whether a misspelling of this key has been reported.
+    pub fn misspelt(&self, row: &Row<'_>, key: &str) -> bool {
+        self.meant.contains(&(row.path.clone(), key.to_owned()))
+    }
+
     /// Whether a key is there, or a misspelling of it that has been reported.
     pub fn has(&self, row: &Row<'_>, key: &str) -> bool {
-        row.table.contains_key(key) || self.meant.contains(&(row.path.clone(), key.to_owned()))
+        row.table.contains_key(key) || self.misspelt(row, key)
     }
 
     /// A value that must be there.

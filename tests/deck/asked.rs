@@ -45,6 +45,8 @@ fn a_misspelt_key_is_not_missed_as_well() {
     one(&[("basis = ", "bassis = ")], "unknown key \"bassis\"");
     one(&[("nature = \"permanent\"", "natur = \"permanent\"")], "unknown key \"natur\"");
     one(&[("E = \"210 GPa\"", "e = \"210 GPa\"")], "unknown key \"e\"");
+    one(&[("E = \"210 GPa\"", "Emod = \"210 GPa\"")], "unknown key \"Emod\"");
+    one(&[("p = \"9 kN\"", "point = \"9 kN\"")], "unknown key \"point\"");
     one(&[("length = \"3.2 m\"", "lenght = \"3.2 m\"")], "unknown key \"lenght\"");
     one(&[("[combination.S1]", "[combinations.S1]")], "unknown key \"combinations\"");
     one(&[("kind = \"self_weight\"", "knd = \"self_weight\"")], "unknown key \"knd\"");
@@ -67,7 +69,8 @@ fn what_cannot_be_read_is_not_reported_by_what_needs_it() {
 #[test]
 fn an_elastic_support_holds_what_it_names() {
     let elastic = |keys: &str| {
-        let text = changed(&[("kind = \"roller\"", &format!("kind = \"elastic\"\n{keys}"))]);
+        let elastic = format!("kind = \"elastic\"\n{keys}");
+        let text = changed(&[("kind = \"roller\"", &elastic), ("ratio = 250", "absolute = \"20 mm\"")]);
         member(&text).map(|member| member.warnings.into_iter().map(|w| w.message).collect::<Vec<_>>())
     };
     let warned = elastic("vertical = \"12 kN/mm\"").unwrap();

@@ -20,8 +20,9 @@ const KINDS: [(&str, &[&str]); 9] = [
 impl Build<'_> {
     pub(super) fn cases(&mut self, root: &Row<'_>) {
         let list = self.reader.named(root, "case");
-        self.cases.complete = list.as_ref().is_some_and(|list| !list.is_empty());
-        if !self.cases.complete && (list.is_some() || !self.reader.has(root, "case")) {
+        let empty = list.as_ref().is_none_or(Vec::is_empty);
+        self.cases.complete = !empty && !self.reader.misspelt(root, "case");
+        if empty && (list.is_some() || !self.reader.has(root, "case")) {
             let span = root.table.get("case").map_or(root.span.clone(), toml::Spanned::span);
             self.reader.fault(span, "the deck has no load case", "add a table [case.NAME] with nature and loads");
         }

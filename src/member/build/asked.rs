@@ -74,8 +74,9 @@ impl Build<'_> {
 
     pub(super) fn combinations(&mut self, root: &Row<'_>) {
         let list = self.reader.named(root, "combination");
-        self.combinations.complete = list.as_ref().is_some_and(|list| !list.is_empty());
-        if !self.combinations.complete && (list.is_some() || !self.reader.has(root, "combination")) {
+        let empty = list.as_ref().is_none_or(Vec::is_empty);
+        self.combinations.complete = !empty && !self.reader.misspelt(root, "combination");
+        if empty && (list.is_some() || !self.reader.has(root, "combination")) {
             let span = root.table.get("combination").map_or(root.span.clone(), toml::Spanned::span);
             let hint = "add a table [combination.NAME] with purpose and factors";
             self.reader.fault(span, "the deck has no combination", hint);

@@ -10,8 +10,9 @@ const KEYS: [&str; 11] = ["E", "I", "A", "density", "weight", "depth", "alpha", 
 impl Build<'_> {
     pub(super) fn sections(&mut self, root: &Row<'_>) {
         let list = self.reader.named(root, "section");
-        self.sections.complete = list.as_ref().is_some_and(|list| !list.is_empty());
-        if !self.sections.complete && (list.is_some() || !self.reader.has(root, "section")) {
+        let empty = list.as_ref().is_none_or(Vec::is_empty);
+        self.sections.complete = !empty && !self.reader.misspelt(root, "section");
+        if empty && (list.is_some() || !self.reader.has(root, "section")) {
             let span = root.table.get("section").map_or(root.span.clone(), toml::Spanned::span);
             self.reader.fault(span, "the deck has no section", "add a table [section.NAME] with E and I");
         }
@@ -69,8 +70,7 @@ impl Build<'_> {
     ) -> T {
         let before = self.reader.errors();
         let found = read(self);
-        let misspelt = |key: &&str| self.reader.has(row, key) && !row.table.contains_key(*key);
-        if self.reader.errors() > before || keys.iter().any(misspelt) {
+        if self.reader.errors() > before || keys.iter().any(|key| self.reader.misspelt(row, key)) {
             self.unsure.insert((index, what));
         }
         found

@@ -21,8 +21,9 @@ type Found = (std::ops::Range<usize>, Support, Vec<Declared>);
 impl Build<'_> {
     pub(super) fn supports(&mut self, root: &Row<'_>) {
         let list = self.reader.named(root, "support");
-        self.supports.complete = list.as_ref().is_some_and(|list| !list.is_empty());
-        if !self.supports.complete && (list.is_some() || !self.reader.has(root, "support")) {
+        let empty = list.as_ref().is_none_or(Vec::is_empty);
+        self.supports.complete = !empty && !self.reader.misspelt(root, "support");
+        if empty && (list.is_some() || !self.reader.has(root, "support")) {
             let span = root.table.get("support").map_or(root.span.clone(), toml::Spanned::span);
             let hint = "add a table [support.NAME] with at and kind";
             self.reader.fault(span, "the member has no support", hint);
@@ -81,7 +82,7 @@ impl Build<'_> {
         if kind == SupportKind::Elastic {
             self.elastic(name, row, matches!((&vertical, &rotation), (Hold::Free, Hold::Free)));
         }
-        let misspelt = |key: &str| self.reader.has(row, key) && !row.table.contains_key(key);
+        let misspelt = |key: &str| self.reader.misspelt(row, key);
         if self.reader.errors() > before || misspelt("vertical") || misspelt("rotation") {
             self.supports_known = false;
         }
@@ -150,8 +151,7 @@ impl Build<'_> {
                 self.reader.fault(right.0.clone(), message, "one hinge releases the moment there: take the other out");
             }
         }
-        let misspelt = self.reader.has(root, "hinge") && !root.table.contains_key("hinge");
-        self.hinges_known = self.reader.errors() == before && !misspelt;
+        self.hinges_known = self.reader.errors() == before && !self.reader.misspelt(root, "hinge");
         self.member.hinges = list.into_iter().map(|(_, hinge)| hinge).collect();
     }
 
