@@ -75,19 +75,19 @@ impl Reader<'_> {
         number
     }
 
-    /// A typed quantity of any dimension.
-    pub fn typed(&mut self, value: Value<'_>, key: &str) -> Option<Amount> {
+    /// A typed quantity of any dimension; `example` is one that is lawful here.
+    pub fn typed(&mut self, value: Value<'_>, key: &str, example: &str) -> Option<Amount> {
         let text = match value.get_ref() {
             DeValue::String(text) => text,
             DeValue::Integer(_) | DeValue::Float(_) => {
                 self.fault(
                     value.span(),
                     format!("{key} is a bare number where a unit belongs"),
-                    "write it in quotes with its unit, as in \"8.5 kN/m\"",
+                    format!("write it in quotes with its unit, as in \"{example}\""),
                 );
                 return None;
             }
-            _ => return self.wrong_type(value, key, "a quantity in quotes", "as in \"8.5 kN/m\""),
+            _ => return self.wrong_type(value, key, "a quantity in quotes", &format!("as in \"{example}\"")),
         };
         match parse_placed(text) {
             Ok((typed, units)) => {
@@ -96,7 +96,9 @@ impl Reader<'_> {
             }
             Err(inner) => {
                 let span = self.inner(value.span(), text, inner.range);
-                self.fault(span, format!("{key}: {}", inner.message), inner.hint);
+                let general = format!("write it as in \"{example}\"");
+                let hint = if inner.hint.is_empty() { general } else { inner.hint };
+                self.fault(span, format!("{key}: {}", inner.message), hint);
                 None
             }
         }
@@ -113,7 +115,7 @@ impl Reader<'_> {
 
     /// A quantity of one dimension.
     pub fn quantity<T: Physical>(&mut self, value: Value<'_>, key: &str) -> Option<Given<T>> {
-        let amount = self.typed(value, key)?;
+        let amount = self.typed(value, key, describe(T::DIMENSION).1)?;
         self.measured(value, key, amount)
     }
 

@@ -1,6 +1,6 @@
 //! A walk over a spanned TOML tree that collects every fault.
 
-use std::collections::BTreeSet;
+use std::collections::{BTreeMap, BTreeSet};
 use std::ops::Range;
 
 use toml::Spanned;
@@ -39,12 +39,14 @@ pub struct Reader<'t> {
     warnings: usize,
     /// Keys that a misspelt key was taken for, by the path of their table: they are not missed as well.
     meant: BTreeSet<(String, String)>,
+    /// Findings about keys that nothing is near to, by the path of their table: one that is missed there may be meant.
+    strange: BTreeMap<String, usize>,
 }
 
 impl<'t> Reader<'t> {
     /// A reader of this text.
     pub fn new(text: &'t str) -> Self {
-        Self { text, findings: Vec::new(), errors: 0, warnings: 0, meant: BTreeSet::new() }
+        Self { text, findings: Vec::new(), errors: 0, warnings: 0, meant: BTreeSet::new(), strange: BTreeMap::new() }
     }
 
     /// Reports an error.
@@ -97,6 +99,9 @@ impl<'t> Reader<'t> {
                 };
                 self.meant.extend(near.map(|near| (row.path.clone(), near.to_owned())));
                 self.fault(key.span(), format!("unknown key \"{}\" in {}", clip(name), row.path), hint);
+                if near.is_none() && self.errors <= MOST {
+                    self.strange.insert(row.path.clone(), self.findings.len() - 1);
+                }
             }
         }
     }
@@ -111,10 +116,16 @@ impl<'t> Reader<'t> {
         row.table.contains_key(key) || self.misspelt(row, key)
     }
 
-    /// A value that must be there.
+    /// A value that must be there; where it is missing and a key is not known, the one is taken for the other.
     pub fn required<'a>(&mut self, row: &Row<'a>, key: &str) -> Option<Value<'a>> {
         let value = row.table.get(key);
         if value.is_none() && !self.has(row, key) {
+            let strange = self.strange.remove(&row.path);
+            if let Some(finding) = strange.and_then(|index| self.findings.get_mut(index)) {
+                finding.hint = format!("did you mean {key}, which is missing?");
+                self.meant.insert((row.path.clone(), key.to_owned()));
+                return None;
+            }
             self.fault(row.span.clone(), format!("{} lacks the key \"{key}\"", row.path), format!("add {key} = …"));
         }
         value

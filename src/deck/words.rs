@@ -9,16 +9,18 @@ pub fn nearest<'n>(word: &str, names: impl IntoIterator<Item = &'n str>) -> Opti
     }
     let scored =
         names.into_iter().map(|name| (strsim::damerau_levenshtein(&name.to_lowercase(), &word.to_lowercase()), name));
-    scored.min().filter(|(distance, name)| *distance <= 1 + name.len() / 3).map(|(_, name)| name)
+    // Near enough: a third of its letters and one, and at least one letter in common.
+    let near = |distance: usize, name: &str| distance <= 1 + name.len() / 3 && distance < word.len().max(name.len());
+    scored.min().filter(|(distance, name)| *distance == 0 || near(*distance, name)).map(|(_, name)| name)
 }
 
-/// "did you mean …?" where a known name is near, else the known names after `otherwise`; at most a dozen of them.
+/// "did you mean …?" where a known name is near, else the known names after `otherwise`; at most sixteen of them.
 pub fn suggest<'n>(word: &str, names: impl IntoIterator<Item = &'n str> + Clone, otherwise: &str) -> String {
     if let Some(near) = nearest(word, names.clone()) {
         return format!("did you mean {near}?");
     }
-    let mut known: Vec<&str> = names.into_iter().take(13).collect();
-    if known.len() == 13 {
+    let mut known: Vec<&str> = names.into_iter().take(17).collect();
+    if known.len() == 17 {
         known.pop();
         known.push("…");
     }

@@ -48,7 +48,7 @@ pub fn parse_placed(text: &str) -> Result<(Typed, Vec<Range<usize>>), QuantityFa
         let end = unit_end(text, start);
         let words = text.get(start..end).unwrap_or_default().trim_end();
         if words.is_empty() {
-            return Err(fault(at..after, "a unit is missing behind the number", "write a unit, as in \"8.5 kN/m\""));
+            return Err(fault(at..after, "a unit is missing behind the number", ""));
         }
         if second_number(words) {
             return Err(grouped(text, at, start));
@@ -165,7 +165,7 @@ fn no_number(rest: &str, from: usize, end: usize) -> QuantityFault {
         let hint = "at most 34 digits, and a power of ten within 60";
         return fault(from..from + end, "this number is too long or too great", hint);
     }
-    fault(place, "a plain decimal number was expected", "write a figure and a unit, as in \"12.5 kN\"")
+    fault(place, "a plain decimal number was expected", "")
 }
 
 /// Where the unit that begins at `from` ends: before a space or sign that leads to a figure, or at the end.

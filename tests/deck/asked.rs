@@ -42,6 +42,8 @@ fn a_missing_table_is_one_fault_however_much_needs_it() {
 
 #[test]
 fn a_misspelt_key_is_not_missed_as_well() {
+    one(&[("basis = ", "reason = ")], "unknown key \"reason\"");
+    one(&[("w = \"3.5 kN/m\"", "q = \"3.5 kN/m\"")], "unknown key \"q\"");
     one(&[("basis = ", "bassis = ")], "unknown key \"bassis\"");
     one(&[("nature = \"permanent\"", "natur = \"permanent\"")], "unknown key \"natur\"");
     one(&[("E = \"210 GPa\"", "e = \"210 GPa\"")], "unknown key \"e\"");

@@ -105,7 +105,10 @@ impl Build<'_> {
             let case = key.get_ref().to_string();
             let index = self.cases.find(&mut self.reader, key.span(), &case);
             let Some(factor) = self.reader.number(value, "factor") else { continue };
-            if factor.value == 0.0 && index.is_some() {
+            if factor.value == 0.0
+                && let Some(index) = index
+            {
+                self.zeroed.insert(index);
                 let message = format!("the factor of case {case} in combination {name} is zero");
                 self.reader.warn(value.span(), message, "leave it out, or give a factor");
             }

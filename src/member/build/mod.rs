@@ -63,6 +63,8 @@ struct Build<'t> {
     unsure: BTreeSet<(usize, &'static str)>,
     /// Sections that have been reported for lacking what a load needs, with what that is.
     lacking: BTreeSet<(usize, &'static str)>,
+    /// Cases that a combination counts with a factor of zero, written out.
+    zeroed: BTreeSet<usize>,
     support_spans: Vec<Range<usize>>,
     redundant_spans: Vec<Range<usize>>,
     whole: Range<usize>,
@@ -112,6 +114,7 @@ pub fn attempt(text: &str) -> Attempt {
         spans: Names::new("span"),
         unsure: BTreeSet::new(),
         lacking: BTreeSet::new(),
+        zeroed: BTreeSet::new(),
         support_spans: Vec::new(),
         redundant_spans: Vec::new(),
         whole,

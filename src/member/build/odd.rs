@@ -2,7 +2,7 @@
 
 use super::Build;
 use crate::deck::Row;
-use crate::member::LoadKind;
+use crate::member::{LoadKind, System};
 use crate::quantity::{Area, Decimal, Given, Length, SecondMoment, Stress};
 
 impl Build<'_> {
@@ -23,21 +23,27 @@ impl Build<'_> {
         }
         let (Some(i), Some(depth), Some(value)) = (second_moment, depth, row.table.get("I")) else { return };
         let (i, depth) = (i.value.si(), depth.value.si());
-        let millimetres = |metres: f64| Decimal::nearest(metres * 1e3, 3).trimmed();
+        let (unit, size) = match self.member.title.system {
+            System::Si => ("mm", 1e-3),
+            System::Us => ("in", 0.0254),
+        };
+        let small = |metres: f64| Decimal::nearest(metres / size, 3).trimmed();
         if let Some(area) = area {
             let gyration = (i / area.value.si()).sqrt();
             // No part of a section lies farther than its depth from the axis: sqrt(I/A) is at most half of the depth. A
             // solid rectangle has 0.29 of it.
             if gyration > depth * 0.5 * (1.0 + 1e-9) || gyration < depth * 0.05 {
-                let (r, d) = (millimetres(gyration), millimetres(depth));
-                let message =
-                    format!("I of {} does not suit its A and depth: sqrt(I/A) = {r} mm, depth {d} mm", row.path);
+                let (r, d) = (small(gyration), small(depth));
+                let message = format!(
+                    "I of {} does not suit its A and depth: sqrt(I/A) = {r} {unit}, depth {d} {unit}",
+                    row.path
+                );
                 let hint = "sqrt(I/A) of a section is about 0.3 to 0.45 of its depth: mind the units";
                 self.reader.warn(value.span(), message, hint);
             }
         } else if i > depth * depth * depth * depth * 100.0 {
             // Wider than a hundred times its depth, even as a solid rectangle twelve times so.
-            let message = format!("I of {} is great for a depth of {} mm", row.path, millimetres(depth));
+            let message = format!("I of {} is great for a depth of {} {unit}", row.path, small(depth));
             self.reader.warn(value.span(), message, "mind the units");
         }
     }
@@ -48,7 +54,8 @@ impl Build<'_> {
         let member = &self.member;
         for (index, case) in member.cases.iter().enumerate() {
             let used = member.combinations.iter().any(|c| c.factors.get(index).is_some_and(|f| f.value != 0.0));
-            if !used {
+            // A factor of zero that is written out has been spoken of.
+            if !used && !self.zeroed.contains(&index) {
                 let message = format!("no combination uses case {}", case.name);
                 odd.push((self.cases.span(&case.name), message, "give it a factor, or take it out"));
             }

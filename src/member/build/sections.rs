@@ -100,7 +100,7 @@ impl Build<'_> {
                 self.reader.fault(density.span(), format!("{} gives both weight and density", row.path), hint);
                 return None;
             }
-            let amount = self.reader.typed(value, "weight")?;
+            let amount = self.reader.typed(value, "weight", "0.42 kN/m")?;
             return if amount.has_mass() {
                 self.heavy(value, "weight", amount).map(Weight::MassPerLength)
             } else {
@@ -108,7 +108,7 @@ impl Build<'_> {
             };
         }
         let value = row.table.get("density")?;
-        let amount = self.reader.typed(value, "density")?;
+        let amount = self.reader.typed(value, "density", "7850 kg/m^3")?;
         if !self.reader.has(row, "A") {
             self.reader.fault(value.span(), "density without A gives no weight", "add the area A");
         }
