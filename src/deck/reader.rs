@@ -225,7 +225,7 @@ impl<'t> Reader<'t> {
         let DeValue::Array(list) = value.get_ref() else {
             return self.wrong_type(value, key, "a list", hint).unwrap_or_default();
         };
-        if let Some(first) = list.iter().nth(most) {
+        if let Some(first) = list.get(most) {
             self.fault(first.span(), format!("more than {most} items in {key}"), "split the deck");
         }
         list.iter().take(most).collect()

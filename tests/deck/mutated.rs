@@ -3,7 +3,7 @@
 use proptest::prelude::*;
 use proptest::sample::Index;
 
-use proofspan::calculation::member;
+use proofspan::calculation::{Calculation, Fault, member};
 use proofspan::deck::starter;
 use proofspan::diagnostic::render;
 
@@ -159,7 +159,7 @@ fn check(text: &str) -> Result<(), String> {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 600, failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(ProptestConfig { cases: 400, failure_persistence: None, ..ProptestConfig::default() })]
 
     #[test]
     fn a_changed_deck_is_a_member_or_has_a_fault(
@@ -168,6 +168,18 @@ proptest! {
     ) {
         let text = changes.iter().fold(DECKS[deck].to_owned(), |text, change| changed(&text, change));
         prop_assert!(check(&text).is_ok(), "{}\n{text}", check(&text).unwrap_err());
+    }
+
+    #[test]
+    fn a_changed_deck_that_is_lawful_is_solved_or_refused(
+        deck in 0_usize..DECKS.len(),
+        changes in proptest::collection::vec(change(), 1..4),
+    ) {
+        let text = changes.iter().fold(DECKS[deck].to_owned(), |text, change| changed(&text, change));
+        if let Err(fault) = Calculation::new(&text) {
+            let program = matches!(fault, Fault::Program(_));
+            prop_assert!(!program, "{fault:?}\n{text}");
+        }
     }
 
     #[test]

@@ -89,7 +89,13 @@ fn every_unconfirmed_value_has_its_sentence() {
 #[test]
 fn wishes_beyond_reason_are_refused() {
     let refuse = |from: &str, to: &str, words: &str| {
-        let text = marked().replacen(from, to, 1);
+        // The starter's remarks speak of the same keys: what is meant stands behind them.
+        let (before, tables) = marked().rsplit_once("\n\n[[revision]]\nletter = \"0\"").map_or_else(
+            || panic!("the tables of the record"),
+            |(before, tables)| (before.to_owned(), format!("\n\n[[revision]]\nletter = \"0\"{tables}")),
+        );
+        assert!(tables.contains(from), "{from}");
+        let text = before + &tables.replacen(from, to, 1);
         let faults = member(&text).unwrap_err();
         assert!(faults.len() == 1 && faults[0].message.contains(words), "{words}: {faults:?}");
     };
