@@ -234,6 +234,10 @@ pub fn both_routes(member: &Member, analysis: &Analysis) -> Vec<Row> {
             second.deflections.iter().map(|(place, v)| (named(*place), at(*place), *v)).collect();
         deflections.push((String::new(), greatest, greatest));
         moments.push((String::new(), arms, arms));
+        // Where nothing but movements is imposed, forces are measured by what so stiff a member would need for them.
+        let stiff = least_rigidity(member) * greatest / (member.end().x() * member.end().x()) * 1e-6;
+        moments.push((String::new(), stiff, stiff));
+        forces.push((String::new(), stiff / member.end().x(), stiff / member.end().x()));
         let pushes = moments.iter().map(|(_, moment, _)| moment.abs()).fold(0.0, f64::max) / member.end().x();
         forces.push((String::new(), pushes, pushes));
         let cuts = first.total.pieces.iter().flat_map(|piece| [piece.left, piece.right]);
@@ -249,7 +253,18 @@ pub fn both_routes(member: &Member, analysis: &Analysis) -> Vec<Row> {
     rows
 }
 
-fn crosscheck(member: &Member, analysis: &Analysis) -> Result<Agreement, Fault> {
+/// The least EI of the member, N·m².
+fn least_rigidity(member: &Member) -> f64 {
+    let sections = member.segments.iter().flat_map(|s| [Some(s.section), s.taper.map(|taper| taper.to)]).flatten();
+    let rigidity = sections.filter_map(|index| member.sections.get(index)).map(analysis::stiffness::rigidity);
+    rigidity.fold(f64::INFINITY, f64::min)
+}
+
+/// Every independent check of a solved member.
+///
+/// # Errors
+/// [`Fault::Disagreement`] with the figures that differ by more than 1e-6.
+pub fn crosscheck(member: &Member, analysis: &Analysis) -> Result<Agreement, Fault> {
     let rows = both_routes(member, analysis);
     let pairs = |solution: &analysis::Solution| -> Vec<(f64, f64)> {
         solution.reactions.iter().map(|reaction| (reaction.force, reaction.moment)).collect()

@@ -3,6 +3,7 @@
 
 mod archive;
 mod cli;
+mod crosscheck;
 mod deck;
 mod faults;
 mod figure;
