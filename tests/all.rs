@@ -4,6 +4,7 @@
 mod archive;
 mod cli;
 mod crosscheck;
+mod deck;
 mod faults;
 mod figure;
 mod flow;
