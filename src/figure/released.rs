@@ -2,8 +2,9 @@
 
 use super::Words;
 use super::band::{self, Depths, Scale};
-use super::canvas::{Canvas, HEAVY, NORMAL, plain, sub, symbol};
+use super::canvas::{Canvas, HEAVY, LABEL, NORMAL, plain, sub, symbol};
 use super::elevation::{LEFT, kind_word, name_notes, symbol_size};
+use super::measure;
 use super::primitive::{Drawing, Run, at};
 use super::rows::{Layer, Note, annotate};
 use super::support::{Held, Side, Symbol, ghost, hinge};
@@ -54,8 +55,11 @@ pub fn released(member: &Member, redundants: &[Redundant], said: &Words, width: 
     for note in notes(member, redundants, scale, |redundant| matches!(redundant, Redundant::Force(_))) {
         match below.iter_mut().find(|name| (name.x - note.x).abs() < 0.01) {
             Some(name) => {
-                name.runs.push(plain(": "));
-                name.runs.extend(note.runs);
+                let mut both = name.runs.clone();
+                both.push(plain(": "));
+                both.extend(note.runs.iter().cloned());
+                // The force bears the support's name: where both are too wide together, it says enough.
+                name.runs = if measure::width(&both, LABEL) < width - 1.0 { both } else { note.runs };
             }
             None => below.push(note),
         }

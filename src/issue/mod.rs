@@ -83,6 +83,30 @@ pub fn print(
     deck: &str,
     wishes: &Wishes,
 ) -> Result<Printed, sheet::Fault> {
+    let (model, options) = prepared(calculation, working, deck, wishes)?;
+    sheet::print(&model, &options)
+}
+
+/// The text of every page of the same sheet, as [`sheet::text`] gives it.
+///
+/// # Errors
+/// As [`print`].
+pub fn text(
+    calculation: &Calculation,
+    working: &Working,
+    deck: &str,
+    wishes: &Wishes,
+) -> Result<Vec<String>, sheet::Fault> {
+    let (model, options) = prepared(calculation, working, deck, wishes)?;
+    sheet::text(&model, &options)
+}
+
+fn prepared(
+    calculation: &Calculation,
+    working: &Working,
+    deck: &str,
+    wishes: &Wishes,
+) -> Result<(Model, Options), sheet::Fault> {
     let labels = wishes.templates.labels()?;
     let member = &calculation.member;
     let results = results(calculation, working, wishes);
@@ -116,7 +140,7 @@ pub fn print(
         ident: calculation.deck_sha256.clone(),
         ..Options::default()
     };
-    sheet::print(&model, &options)
+    Ok((model, options))
 }
 
 /// The results that travel inside a sheet: the results of the deck, the working, and how the sheet was issued.

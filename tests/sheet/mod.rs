@@ -5,6 +5,7 @@ mod office;
 mod readback;
 mod real;
 mod sample;
+mod scorecard;
 mod told;
 
 use proofspan::sheet::print;

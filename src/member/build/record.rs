@@ -78,6 +78,15 @@ impl Build<'_> {
         let first = first.and_then(|value| self.reader.whole_number(value, "first_sheet", 1..=9999));
         let decimals = self.decimals(&row);
         let decimal_comma = self.reader.flag(&row, "decimal_comma");
+        for key in ["decimals", "decimal_comma"] {
+            if let Some(value) = row.table.get(key)
+                && (key == "decimals" || decimal_comma)
+            {
+                let message =
+                    format!("{key} is not followed: sheets print the figures their steps close with, with a point");
+                self.reader.warn(value.span(), message, "leave it out");
+            }
+        }
         let first_sheet = first.and_then(|number| usize::try_from(number).ok());
         self.member.record.sheet = crate::member::SheetWishes { letter, first_sheet, brief, decimals, decimal_comma };
         if let Some(value) = row.table.get("retention") {
