@@ -6,7 +6,7 @@ use crate::analysis::stability::{self, BadChoice, Mechanism, Movement};
 use crate::analysis::{self, Analysis};
 use crate::crosscheck::{self, Row};
 use crate::diagnostic::{Diagnostic, Severity};
-use crate::member::build::{self, Reading};
+use crate::member::build::{self, Attempt, Reading};
 use crate::member::{Member, Place};
 use crate::quantity::{Decimal, Length, Physical, parse_quantity};
 use crate::results::{self, Agreement};
@@ -140,29 +140,41 @@ pub fn hexadecimal(bytes: &[u8]) -> String {
 /// # Errors
 /// Every fault of the deck, a mechanism, or the reason why the chosen redundants cannot be released.
 pub fn member(text: &str) -> Result<Member, Vec<Diagnostic>> {
-    let Reading { member, redundants, whole, .. } = build::read(text)?;
-    if let Some(mechanism) = stability::mechanism(&member) {
-        let message = format!("the member is a mechanism: {}", moving(&member, mechanism));
-        return Err(vec![
-            Diagnostic::error(whole, message).hint("add a support, let a support hold rotation, or take out a hinge"),
-        ]);
+    let Attempt { reading, mut faults, geometry, redundants } = build::attempt(text);
+    if geometry {
+        faults.extend(unstable(&reading, redundants));
+        faults.sort_by_key(|fault| fault.span.as_ref().map(|span| span.start));
     }
-    let Some(chosen) = &member.redundants else { return Ok(member) };
-    let fault = match stability::check_choice(&member, chosen) {
-        Ok(()) => return Ok(member),
-        Err(BadChoice::Count { needed, chosen }) => {
-            let place = redundants.first().cloned().unwrap_or(whole);
-            Diagnostic::error(place, format!("the member has {needed} redundants, but {chosen} are chosen"))
-                .hint("choose as many as the degree of indeterminacy, or leave the choice out")
+    if faults.is_empty() { Ok(reading.member) } else { Err(faults) }
+}
+
+/// What keeps a member from being solved: a mechanism, or redundants that cannot be released.
+fn unstable(reading: &Reading, redundants: bool) -> Option<Diagnostic> {
+    let Reading { member, supports, redundants: places, whole } = reading;
+    if let Some(mechanism) = stability::mechanism(member) {
+        let message = format!("the member is a mechanism: {}", moving(member, mechanism));
+        let within = |place: Place| place >= mechanism.from && place <= mechanism.to;
+        let near = member.supports.iter().zip(supports).find(|(support, _)| within(support.at)).map(|(_, span)| span);
+        let place = near.or_else(|| supports.first()).unwrap_or(whole);
+        let hint = "add a support, let a support hold rotation, or take out a hinge";
+        return Some(Diagnostic::error(place.clone(), message).hint(hint));
+    }
+    let chosen = member.redundants.as_ref().filter(|_| redundants)?;
+    match stability::check_choice(member, chosen).err()? {
+        BadChoice::Count { needed, chosen } => {
+            let count = if needed == 1 { "1 redundant".to_owned() } else { format!("{needed} redundants") };
+            let verb = if chosen == 1 { "is" } else { "are" };
+            let message = format!("the member has {count}, but {chosen} {verb} chosen");
+            let hint = "choose as many as the degree of indeterminacy, or leave the choice out";
+            Some(Diagnostic::error(whole.clone(), message).hint(hint))
         }
-        Err(BadChoice::Dependent { index, mechanism }) => {
-            let place = redundants.get(index).cloned().unwrap_or(whole);
-            let name = chosen.get(index).map_or_else(String::new, |redundant| redundant.name(&member));
-            let message = format!("{name} cannot be released as well: {}", moving(&member, mechanism));
-            Diagnostic::error(place, message).hint("choose redundants that leave a stable member")
+        BadChoice::Dependent { index, mechanism } => {
+            let place = places.get(index).unwrap_or(whole);
+            let name = chosen.get(index).map_or_else(String::new, |redundant| redundant.name(member));
+            let message = format!("{name} cannot be released as well: {}", moving(member, mechanism));
+            Some(Diagnostic::error(place.clone(), message).hint("choose redundants that leave a stable member"))
         }
-    };
-    Err(vec![fault])
+    }
 }
 
 /// The movement that nothing holds, in words.
@@ -222,6 +234,10 @@ pub fn both_routes(member: &Member, analysis: &Analysis) -> Vec<Row> {
             second.deflections.iter().map(|(place, v)| (named(*place), at(*place), *v)).collect();
         deflections.push((String::new(), greatest, greatest));
         moments.push((String::new(), arms, arms));
+        // Where nothing but movements is imposed, forces are measured by what so stiff a member would need for them.
+        let stiff = least_rigidity(member) * greatest / (member.end().x() * member.end().x()) * 1e-6;
+        moments.push((String::new(), stiff, stiff));
+        forces.push((String::new(), stiff / member.end().x(), stiff / member.end().x()));
         let pushes = moments.iter().map(|(_, moment, _)| moment.abs()).fold(0.0, f64::max) / member.end().x();
         forces.push((String::new(), pushes, pushes));
         let cuts = first.total.pieces.iter().flat_map(|piece| [piece.left, piece.right]);
@@ -237,7 +253,18 @@ pub fn both_routes(member: &Member, analysis: &Analysis) -> Vec<Row> {
     rows
 }
 
-fn crosscheck(member: &Member, analysis: &Analysis) -> Result<Agreement, Fault> {
+/// The least EI of the member, N·m².
+fn least_rigidity(member: &Member) -> f64 {
+    let sections = member.segments.iter().flat_map(|s| [Some(s.section), s.taper.map(|taper| taper.to)]).flatten();
+    let rigidity = sections.filter_map(|index| member.sections.get(index)).map(analysis::stiffness::rigidity);
+    rigidity.fold(f64::INFINITY, f64::min)
+}
+
+/// Every independent check of a solved member.
+///
+/// # Errors
+/// [`Fault::Disagreement`] with the figures that differ by more than 1e-6.
+pub fn crosscheck(member: &Member, analysis: &Analysis) -> Result<Agreement, Fault> {
     let rows = both_routes(member, analysis);
     let pairs = |solution: &analysis::Solution| -> Vec<(f64, f64)> {
         solution.reactions.iter().map(|reaction| (reaction.force, reaction.moment)).collect()

@@ -3,6 +3,8 @@
 
 mod archive;
 mod cli;
+mod crosscheck;
+mod deck;
 mod faults;
 mod figure;
 mod flow;

@@ -88,6 +88,11 @@ pub struct PieceEnds {
     pub end: Sway,
 }
 
+/// Most corrections of the redundants.
+const CORRECTIONS: usize = 3;
+/// A correction that changes nothing a sheet could show.
+const NEGLIGIBLE: f64 = 1e-13;
+
 /// Solves the member for every case and combination. `None` only for a mechanism or a bad choice of redundants, which
 /// `stability` reports with reasons, or where rounding has eaten a pivot.
 pub fn solve(member: &Member) -> Option<Analysis> {
@@ -125,9 +130,30 @@ fn solve_case(solver: &Solver<'_>, flexibility: &Flexibility, case: usize) -> Op
     let imposed: Vec<f64> =
         releases().map(|redundant| imposed_at(member, model, &settlements, &turns, *redundant)).collect();
     let gaps: Vec<f64> = imposed.iter().zip(&movements).map(|(imposed, found)| imposed - found).collect();
-    let (reduced, redundants) = flexibility.solve(&gaps);
-    let values: Vec<(Redundant, f64)> = releases().copied().zip(redundants.iter().copied()).collect();
-    let whole = solver.solve(&Loading { redundants: &values, ..loading.clone() });
+    let (reduced, mut redundants) = flexibility.solve(&gaps);
+    let whole_under = |redundants: &[f64]| {
+        let values: Vec<(Redundant, f64)> = releases().copied().zip(redundants.iter().copied()).collect();
+        solver.solve(&Loading { redundants: &values, ..loading.clone() })
+    };
+    let mut whole = whole_under(&redundants);
+    // Where members far stiffer than their neighbours make the equations lose digits, what the whole member leaves open at
+    // its releases gives them back. Members of one kind need no correction and get none.
+    for _ in 0..CORRECTIONS {
+        let open: Vec<f64> = releases()
+            .zip(&imposed)
+            .zip(&redundants)
+            .map(|((redundant, imposed), x)| {
+                imposed - movement(member, model, &whole, *redundant) - give(member, model, *redundant) * x
+            })
+            .collect();
+        let (_, corrections) = flexibility.solve(&open);
+        let size = |list: &[f64]| list.iter().fold(0.0_f64, |size, x| size.max(x.abs()));
+        if size(&corrections) <= NEGLIGIBLE * size(&redundants) {
+            break;
+        }
+        redundants.iter_mut().zip(&corrections).for_each(|(x, correction)| *x += correction);
+        whole = whole_under(&redundants);
+    }
     let total = Solution {
         reactions: (0..model.supports.len()).map(|support| whole.reactions.get(support)).collect(),
         redundants: redundants.clone(),

@@ -203,6 +203,11 @@ fn candidates(member: &Member) -> Vec<Redundant> {
     match supports().filter(|(_, support)| support.holds_deflection()).count() {
         0 | 1 => moments.into_iter().chain(all_forces).collect(),
         2 => forces(true).chain(forces(false)).chain(moments.into_iter().rev()).collect(),
-        _ => moments.into_iter().chain(all_forces).collect(),
+        // An inner support that holds rotation is a wall to both sides: members hung on it as cantilevers keep apart what
+        // its own moment would mix, and lose no digit where one side is far stiffer than the other.
+        _ => {
+            let (apart, own): (Vec<_>, Vec<_>) = moments.into_iter().partition(|moment| splits(member, *moment));
+            apart.into_iter().chain(forces(true)).chain(forces(false)).chain(own).collect()
+        }
     }
 }

@@ -1,5 +1,6 @@
 //! One element between neighbouring nodes: its flexibility as a cantilever from its left node, by quadrature.
 
+use super::twofold::Twofold;
 use crate::member::{LoadKind, Member, Place, Section, TaperLaw, Weight};
 use crate::quantity::GRAVITY;
 
@@ -13,10 +14,11 @@ const RULE: [(f64, f64); 5] = [
 ];
 
 /// Panels a tapered stretch is divided into; prismatic integrands need one.
-const PANELS: usize = 24;
+/// Linear tapers of a stiffness ratio of 200 are met to 1e-10, of 1000 to 1e-8.
+const PANELS: usize = 96;
 
 /// Deflection and turn, or force and couple.
-pub(super) type Two = [f64; 2];
+pub(super) type Two = [Twofold; 2];
 
 /// An element.
 #[derive(Clone, Debug)]
@@ -116,12 +118,12 @@ fn samples(member: &Member, from: Place, to: Place, breaks: &[Place]) -> Vec<Sam
 impl Element {
     pub(super) fn new(member: &Member, from: Place, to: Place) -> Self {
         let length = to.beyond(from);
-        let mut f = [[0.0; 2]; 2];
+        let mut f = [[Twofold::ZERO; 2]; 2];
         for sample in samples(member, from, to, &[]) {
-            let arm = length - sample.x;
-            let bend = sample.weight / sample.at.ei;
+            let arm = Twofold::from(length - sample.x);
+            let bend = Twofold::from(sample.weight / sample.at.ei);
             let [[vv, vp], [pv, pp]] = &mut f;
-            *vv += arm * arm * bend + sample.at.ga.map_or(0.0, |ga| sample.weight / ga);
+            *vv += arm * arm * bend + Twofold::from(sample.at.ga.map_or(0.0, |ga| sample.weight / ga));
             *vp += arm * bend;
             *pv += arm * bend;
             *pp += bend;
@@ -179,8 +181,8 @@ impl Element {
                     if inside {
                         let turn = sample.weight * sample.at.expansion * difference.value.si() / sample.at.depth;
                         let [v, psi] = &mut sum.tip;
-                        *v += turn * (self.length - sample.x);
-                        *psi += turn;
+                        *v += Twofold::from(turn) * Twofold::from(self.length - sample.x);
+                        *psi += Twofold::from(turn);
                     }
                 }
             }
@@ -222,8 +224,9 @@ impl Element {
             let (shear, hogging) = right_of(sample.x);
             let turn = sample.weight * hogging / sample.at.ei;
             let [v, psi] = &mut sum.tip;
-            *v += turn * (self.length - sample.x) + sample.at.ga.map_or(0.0, |ga| sample.weight * shear / ga);
-            *psi += turn;
+            *v += Twofold::from(turn) * Twofold::from(self.length - sample.x)
+                + Twofold::from(sample.at.ga.map_or(0.0, |ga| sample.weight * shear / ga));
+            *psi += Twofold::from(turn);
         }
     }
 }

@@ -8,6 +8,7 @@ mod band;
 mod element;
 mod equilibrium;
 mod stiffness;
+mod twofold;
 
 pub use equilibrium::residual;
 pub use stiffness::{Nodes, solve};

@@ -2,6 +2,7 @@
 
 use super::band::Band;
 use super::element::{Element, Loaded};
+use super::twofold::Twofold;
 use crate::member::{Hold, LoadKind, Member, Place};
 
 /// What the second route finds for one case.
@@ -65,16 +66,16 @@ impl Grid {
 }
 
 /// The 4 x 4 stiffness of an element: rows and columns v_i, psi_i, v_j, psi_j.
-fn matrix(element: &Element) -> [[f64; 4]; 4] {
-    let l = element.length;
+fn matrix(element: &Element) -> [[Twofold; 4]; 4] {
+    let (l, one, zero) = (Twofold::from(element.length), Twofold::from(1.0), Twofold::ZERO);
     // Movement of the tip relative to the left node: B u with B = [-T, 1].
-    let b = [[-1.0, -l, 1.0, 0.0], [0.0, -1.0, 0.0, 1.0]];
-    let mut k = [[0.0; 4]; 4];
+    let b = [[-one, -l, one, zero], [zero, -one, zero, one]];
+    let mut k = [[zero; 4]; 4];
     for (r, row) in k.iter_mut().enumerate() {
         for (c, slot) in row.iter_mut().enumerate() {
             for (bi, si) in b.iter().zip(&element.stiffness) {
                 for (bj, s) in b.iter().zip(si) {
-                    *slot += pick(bi, r) * s * pick(bj, c);
+                    *slot += pick(bi, r) * *s * pick(bj, c);
                 }
             }
         }
@@ -82,17 +83,19 @@ fn matrix(element: &Element) -> [[f64; 4]; 4] {
     k
 }
 
-fn pick(row: &[f64; 4], index: usize) -> f64 {
+fn pick(row: &[Twofold; 4], index: usize) -> Twofold {
     row.get(index).copied().unwrap_or_default()
 }
 
 /// Forces of the nodes on an element, down and clockwise: left force and couple, right force and couple.
-fn end_forces(element: &Element, loaded: &Loaded, u: [f64; 4]) -> [f64; 4] {
+fn end_forces(element: &Element, loaded: &Loaded, u: [Twofold; 4]) -> [Twofold; 4] {
+    let (length, total, moment) =
+        (Twofold::from(element.length), Twofold::from(loaded.force), Twofold::from(loaded.moment));
     let [vi, pi, vj, pj] = u;
     let [tip_v, tip_psi] = loaded.tip;
-    let gap = [vj - vi - pi * element.length - tip_v, pj - pi - tip_psi];
-    let [force, couple] = element.stiffness.map(|row| row.iter().zip(&gap).map(|(k, g)| k * g).sum::<f64>());
-    [-force - loaded.force, -couple - force * element.length - loaded.moment, force, couple]
+    let gap = [vj - vi - pi * length - tip_v, pj - pi - tip_psi];
+    let [force, couple] = element.stiffness.map(|row| row.iter().zip(&gap).map(|(k, g)| *k * *g).sum::<Twofold>());
+    [-force - total, -couple - force * length - moment, force, couple]
 }
 
 /// Solves every case.
@@ -112,10 +115,10 @@ pub fn solve(member: &Member) -> Vec<Nodes> {
     for node in &grid.nodes {
         let Some(support) = node.support.and_then(|index| member.supports.get(index)) else { continue };
         if let (Hold::Spring(k), Some(v)) = (&support.vertical, node.v) {
-            band.add(v, v, k.value.si());
+            band.add(v, v, k.value.si().into());
         }
         if let (Hold::Spring(k), Some(turn)) = (&support.rotation, node.left) {
-            band.add(turn, turn, k.value.si());
+            band.add(turn, turn, k.value.si().into());
         }
     }
     band.factor();
@@ -146,8 +149,8 @@ fn solve_case(member: &Member, grid: &Grid, band: &Band, case: usize) -> Nodes {
     let moved = imposed(member, case);
     let at = |node: &Node| node.support.and_then(|index| moved.get(index)).copied().unwrap_or_default();
     let loads: Vec<Loaded> = grid.elements.iter().map(|element| element.loaded(member, case)).collect();
-    let mut b = vec![0.0; grid.size];
-    let mut push = |number: Option<usize>, value: f64| {
+    let mut b = vec![Twofold::ZERO; grid.size];
+    let mut push = |number: Option<usize>, value: Twofold| {
         if let Some(slot) = number.and_then(|number| b.get_mut(number)) {
             *slot += value;
         }
@@ -160,7 +163,7 @@ fn solve_case(member: &Member, grid: &Grid, band: &Band, case: usize) -> Nodes {
     };
     for ((element, i, j), loaded) in grid.ends().zip(&loads) {
         let ((vi, pi), (vj, pj)) = (still(i, true), still(j, false));
-        let forces = end_forces(element, loaded, [vi, pi, vj, pj]);
+        let forces = end_forces(element, loaded, [vi, pi, vj, pj].map(Twofold::from));
         for (number, force) in [i.v, i.right, j.v, j.left].into_iter().zip(forces) {
             push(number, -force);
         }
@@ -169,15 +172,17 @@ fn solve_case(member: &Member, grid: &Grid, band: &Band, case: usize) -> Nodes {
         let Some(support) = node.support.and_then(|index| member.supports.get(index)) else { continue };
         let (v, psi) = at(node);
         if let Hold::Spring(k) = &support.vertical {
-            push(node.v, k.value.si() * v);
+            push(node.v, Twofold::from(k.value.si()) * Twofold::from(v));
         }
         if let Hold::Spring(k) = &support.rotation {
-            push(node.left, k.value.si() * psi);
+            push(node.left, Twofold::from(k.value.si()) * Twofold::from(psi));
         }
     }
     let x = band.solve(b);
-    let value = |number: Option<usize>, held: f64| number.map_or(held, |n| x.get(n).copied().unwrap_or_default());
-    let mut sums = vec![(0.0, 0.0); grid.nodes.len()];
+    let value = |number: Option<usize>, held: f64| {
+        number.map_or(Twofold::from(held), |n| x.get(n).copied().unwrap_or_default())
+    };
+    let mut sums = vec![(Twofold::ZERO, Twofold::ZERO); grid.nodes.len()];
     for (index, ((element, i, j), loaded)) in grid.ends().zip(&loads).enumerate() {
         let u = [value(i.v, at(i).0), value(i.right, at(i).1), value(j.v, at(j).0), value(j.left, at(j).1)];
         let [fi, ci, fj, cj] = end_forces(element, loaded, u);
@@ -190,11 +195,11 @@ fn solve_case(member: &Member, grid: &Grid, band: &Band, case: usize) -> Nodes {
     }
     let mut found = Nodes { reactions: vec![(0.0, 0.0); member.supports.len()], deflections: Vec::new() };
     for (node, (force, couple)) in grid.nodes.iter().zip(sums) {
-        found.deflections.push((node.at, value(node.v, at(node).0)));
+        found.deflections.push((node.at, value(node.v, at(node).0).single()));
         let Some(index) = node.support else { continue };
         if let (Some(support), Some(slot)) = (member.supports.get(index), found.reactions.get_mut(index)) {
-            slot.0 = if support.holds_deflection() { -force } else { 0.0 };
-            slot.1 = if support.holds_rotation() { -couple } else { 0.0 };
+            slot.0 = if support.holds_deflection() { -force.single() } else { 0.0 };
+            slot.1 = if support.holds_rotation() { -couple.single() } else { 0.0 };
         }
     }
     found

@@ -1,13 +1,13 @@
 //! A walk over a spanned TOML tree that collects every fault.
 
+use std::collections::{BTreeMap, BTreeSet};
 use std::ops::Range;
 
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
-use crate::diagnostic::Diagnostic;
-use crate::quantity::{Decimal, Dimension, Given, Physical, Typed, parse_quantity};
-use crate::quantity::{Factor, Place};
+use super::words::{clip, kind_of, nearest, suggest};
+use crate::diagnostic::{Diagnostic, Severity};
 
 /// A value with its place.
 pub type Value<'a> = &'a Spanned<DeValue<'a>>;
@@ -19,40 +19,70 @@ pub struct Row<'a> {
     pub table: &'a DeTable<'a>,
     /// Where it stands.
     pub span: Range<usize>,
-    /// What it is called: `section.deep`.
+    /// What it is called: `section.deep`. No two tables are called the same.
     pub path: String,
 }
+
+/// The most faults that are reported, and the most warnings: nobody reads more.
+const MOST: usize = 500;
 
 /// Collects faults and warnings.
 #[derive(Debug)]
 pub struct Reader<'t> {
     /// The text that is read.
     pub text: &'t str,
-    /// Faults and warnings so far.
+    /// Faults and warnings so far, in the order found.
     pub findings: Vec<Diagnostic>,
-}
-
-/// The nearest of some names, when it is near enough to be meant.
-pub fn nearest<'n>(word: &str, names: impl IntoIterator<Item = &'n str>) -> Option<&'n str> {
-    let scored =
-        names.into_iter().map(|name| (strsim::damerau_levenshtein(&name.to_lowercase(), &word.to_lowercase()), name));
-    scored.min().filter(|(distance, name)| *distance <= 1 + name.len() / 3).map(|(_, name)| name)
+    /// How many faults there were, listed or not.
+    errors: usize,
+    /// How many warnings there were, listed or not.
+    warnings: usize,
+    /// Keys that a misspelt key was taken for, by the path of their table: they are not missed as well.
+    meant: BTreeSet<(String, String)>,
+    /// Findings about keys that nothing is near to, by the path of their table: one that is missed there may be meant.
+    strange: BTreeMap<String, usize>,
 }
 
 impl<'t> Reader<'t> {
     /// A reader of this text.
     pub fn new(text: &'t str) -> Self {
-        Self { text, findings: Vec::new() }
+        Self { text, findings: Vec::new(), errors: 0, warnings: 0, meant: BTreeSet::new(), strange: BTreeMap::new() }
     }
 
     /// Reports an error.
     pub fn fault(&mut self, span: Range<usize>, message: impl Into<String>, hint: impl Into<String>) {
-        self.findings.push(Diagnostic::error(span, message).hint(hint));
+        self.errors += 1;
+        if self.errors <= MOST {
+            self.findings.push(Diagnostic::error(span, message).hint(hint));
+        }
     }
 
     /// Reports what is lawful but odd.
     pub fn warn(&mut self, span: Range<usize>, message: impl Into<String>, hint: impl Into<String>) {
-        self.findings.push(Diagnostic::warning(span, message).hint(hint));
+        self.warnings += 1;
+        if self.warnings <= MOST {
+            self.findings.push(Diagnostic::warning(span, message).hint(hint));
+        }
+    }
+
+    /// How many errors there have been: by it a caller sees whether a step has failed.
+    pub const fn errors(&self) -> usize {
+        self.errors
+    }
+
+    /// Errors and warnings, each in the order of the file; where there are too many, a last one says how many more.
+    pub fn sorted(self) -> (Vec<Diagnostic>, Vec<Diagnostic>) {
+        let Self { mut findings, errors, warnings, .. } = self;
+        findings.sort_by_key(|finding| finding.span.as_ref().map(|span| span.start));
+        let (mut faults, mut odd): (Vec<Diagnostic>, Vec<Diagnostic>) =
+            findings.into_iter().partition(|finding| finding.severity == Severity::Error);
+        for (list, count, what) in [(&mut faults, errors, "faults"), (&mut odd, warnings, "warnings")] {
+            if let Some(last) = list.last().filter(|_| count > list.len()) {
+                let message = format!("{} further {what} are not listed", count - list.len());
+                list.push(Diagnostic { message, hint: "mend those that are listed first".to_owned(), ..last.clone() });
+            }
+        }
+        (faults, odd)
     }
 
     /// Reports every key that is not known.
@@ -60,19 +90,42 @@ impl<'t> Reader<'t> {
         for key in row.table.keys() {
             let name = key.get_ref().as_ref();
             if !keys.contains(&name) {
-                let hint = match nearest(name, keys.iter().copied()) {
+                // A longer name for what has a short one here: Emod, Iy, length_m.
+                let longer = keys.iter().copied().filter(|key| name.starts_with(key)).max_by_key(|key| key.len());
+                let near = nearest(name, keys.iter().copied()).or(longer);
+                let hint = match near {
                     Some(near) => format!("did you mean {near}?"),
-                    None => format!("known keys: {}", keys.join(", ")),
+                    None => suggest(name, keys.iter().copied(), "known keys"),
                 };
+                self.meant.extend(near.map(|near| (row.path.clone(), near.to_owned())));
                 self.fault(key.span(), format!("unknown key \"{}\" in {}", clip(name), row.path), hint);
+                if near.is_none() && self.errors <= MOST {
+                    self.strange.insert(row.path.clone(), self.findings.len() - 1);
+                }
             }
         }
     }
 
-    /// A value that must be there.
+    /// Whether a misspelling of this key has been reported.
+    pub fn misspelt(&self, row: &Row<'_>, key: &str) -> bool {
+        self.meant.contains(&(row.path.clone(), key.to_owned()))
+    }
+
+    /// Whether a key is there, or a misspelling of it that has been reported.
+    pub fn has(&self, row: &Row<'_>, key: &str) -> bool {
+        row.table.contains_key(key) || self.misspelt(row, key)
+    }
+
+    /// A value that must be there; where it is missing and a key is not known, the one is taken for the other.
     pub fn required<'a>(&mut self, row: &Row<'a>, key: &str) -> Option<Value<'a>> {
         let value = row.table.get(key);
-        if value.is_none() {
+        if value.is_none() && !self.has(row, key) {
+            let strange = self.strange.remove(&row.path);
+            if let Some(finding) = strange.and_then(|index| self.findings.get_mut(index)) {
+                finding.hint = format!("did you mean {key}, which is missing?");
+                self.meant.insert((row.path.clone(), key.to_owned()));
+                return None;
+            }
             self.fault(row.span.clone(), format!("{} lacks the key \"{key}\"", row.path), format!("add {key} = …"));
         }
         value
@@ -86,13 +139,14 @@ impl<'t> Reader<'t> {
                 self.fault(value.span(), format!("{key} is longer than 10,000 bytes"), "shorten it");
                 None
             }
-            other => self.wrong_type(value, key, "text in quotes", other),
+            _ => self.wrong_type(value, key, "text", "write it in quotes"),
         }
     }
 
-    fn wrong_type<T>(&mut self, value: Value<'_>, key: &str, wanted: &str, found: &DeValue<'_>) -> Option<T> {
-        let found = found.type_str();
-        self.fault(value.span(), format!("{key} must be {wanted}, not of the type {found}"), "");
+    /// Reports a value of the wrong kind.
+    pub fn wrong_type<T>(&mut self, value: Value<'_>, key: &str, wanted: &str, hint: &str) -> Option<T> {
+        let found = kind_of(value.get_ref().type_str());
+        self.fault(value.span(), format!("{key} must be {wanted}, not {found}"), hint);
         None
     }
 
@@ -113,105 +167,18 @@ impl<'t> Reader<'t> {
         Some(text)
     }
 
-    /// A pure number.
-    pub fn number(&mut self, value: Value<'_>, key: &str) -> Option<Factor> {
-        let written = match value.get_ref() {
-            DeValue::Integer(number) if number.radix() == 10 => Decimal::parse(number.as_str()),
-            DeValue::Float(number) => Decimal::parse(number.as_str()),
-            other => return self.wrong_type(value, key, "a plain number", other),
-        };
-        let Some(figure) = written else {
-            self.fault(value.span(), format!("{key} is not a finite decimal number"), "");
-            return None;
-        };
-        Some(Factor { value: figure.to_f64(), figure })
-    }
-
-    /// A pure number above zero.
-    pub fn positive_number(&mut self, value: Value<'_>, key: &str) -> Option<Factor> {
-        let number = self.number(value, key)?;
-        if number.value > 0.0 {
-            return Some(number);
-        }
-        self.fault(value.span(), format!("{key} must be greater than zero"), "");
-        None
-    }
-
-    /// A typed quantity of any dimension.
-    pub fn typed(&mut self, value: Value<'_>, key: &str) -> Option<Typed> {
-        let text = match value.get_ref() {
-            DeValue::String(text) => text,
-            DeValue::Integer(_) | DeValue::Float(_) => {
-                self.fault(
-                    value.span(),
-                    format!("{key} is a bare number where a unit belongs"),
-                    "write it in quotes with its unit, as in \"8.5 kN/m\"",
-                );
-                return None;
-            }
-            other => return self.wrong_type(value, key, "a quantity in quotes, as in \"8.5 kN/m\"", other),
-        };
-        match parse_quantity(text) {
-            Ok(typed) => Some(typed),
-            Err(inner) => {
-                let span = self.inner(value.span(), text, inner.range);
-                self.fault(span, format!("{key}: {}", inner.message), inner.hint);
-                None
-            }
-        }
-    }
-
-    /// The place of a part of a string, where the string stands in the file as it reads.
-    fn inner(&self, span: Range<usize>, text: &str, part: Range<usize>) -> Range<usize> {
-        let source = self.text.get(span.clone()).unwrap_or_default();
-        match source.find(text) {
-            Some(offset) if !text.is_empty() => span.start + offset + part.start..span.start + offset + part.end,
-            _ => span,
-        }
-    }
-
-    /// A quantity of one dimension.
-    pub fn quantity<T: Physical>(&mut self, value: Value<'_>, key: &str) -> Option<Given<T>> {
-        let typed = self.typed(value, key)?;
-        self.measured(value, key, typed)
-    }
-
-    /// A typed quantity taken as one of a dimension.
-    pub fn measured<T: Physical>(&mut self, value: Value<'_>, key: &str, typed: Typed) -> Option<Given<T>> {
-        for term in &typed.terms {
-            if !fits(term.unit.dimension(), T::DIMENSION) {
-                let message = format!("{key}: \"{}\" is not a unit of {}", term.unit, name_of(T::DIMENSION));
-                self.fault(value.span(), message, format!("write it as in \"{}\"", example(T::DIMENSION)));
-                return None;
-            }
-        }
-        if typed.terms.len() > 1 && T::DIMENSION != Dimension::new(0, 1, 0, 0, 0) {
-            self.fault(value.span(), format!("{key}: only lengths may be sums"), "write one figure and one unit");
-            return None;
-        }
-        let si = typed.terms.iter().try_fold(0.0, |sum, term| Some(sum + term.figure.to_f64() * term.unit.si()?));
-        // Far beyond any structure, and near enough to 1 that no product of them overflows.
-        let sane = |si: &f64| *si == 0.0 || (1e-30..=1e30).contains(&si.abs());
-        let Some(value_si) = si.filter(sane).and_then(T::from_si) else {
-            self.fault(value.span(), format!("{key} is beyond what can be computed"), "");
-            return None;
-        };
-        Some(Given { value: value_si, typed })
-    }
-
-    /// A place or length as exact metres.
-    pub fn metres(&mut self, value: Value<'_>, key: &str) -> Option<(Place, Typed)> {
-        let typed = self.quantity::<crate::quantity::Length>(value, key)?.typed;
-        let exact = typed.terms.iter().try_fold(Decimal::ZERO, |sum, term| {
-            let (size, _) = term.unit.size()?;
-            sum.plus(term.figure.times(size)?)
-        });
-        match exact {
-            Some(exact) => Some((Place::metres(exact.trimmed()), typed)),
-            None => {
-                self.fault(value.span(), format!("{key} has too many digits"), "");
-                None
-            }
+    /// A date without a time, as year, month, day.
+    pub fn date(&mut self, value: Value<'_>, key: &str) -> Option<(u16, u8, u8)> {
+        let hint = "write it without quotes: 2026-11-30";
+        match value.get_ref() {
+            DeValue::Datetime(stamp) => match (stamp.date, stamp.time, stamp.offset) {
+                (Some(date), None, None) => Some((date.year, date.month, date.day)),
+                _ => {
+                    self.fault(value.span(), format!("{key} must be a date without a time"), hint);
+                    None
+                }
+            },
+            _ => self.wrong_type(value, key, "a date", hint),
         }
     }
 
@@ -220,7 +187,7 @@ impl<'t> Reader<'t> {
         match row.table.get(key).map(|value| (value, value.get_ref())) {
             None => false,
             Some((_, DeValue::Boolean(flag))) => *flag,
-            Some((value, other)) => self.wrong_type(value, key, "true or false", other).unwrap_or(false),
+            Some((value, _)) => self.wrong_type(value, key, "true or false", "without quotes").unwrap_or(false),
         }
     }
 
@@ -230,11 +197,7 @@ impl<'t> Reader<'t> {
         if let Some((_, found)) = words.iter().find(|(word, _)| *word == text) {
             return Some(*found);
         }
-        let names: Vec<&str> = words.iter().map(|(word, _)| *word).collect();
-        let hint = match nearest(&text, names.iter().copied()) {
-            Some(near) => format!("did you mean {near}?"),
-            None => format!("one of: {}", names.join(", ")),
-        };
+        let hint = suggest(&text, words.iter().map(|(word, _)| *word), "one of");
         self.fault(value.span(), format!("{key} cannot be \"{}\"", clip(&text)), hint);
         None
     }
@@ -244,93 +207,27 @@ impl<'t> Reader<'t> {
         let path = path.into();
         match value.get_ref() {
             DeValue::Table(table) => Some(Row { table, span: value.span(), path }),
-            other => self.wrong_type(value, &path, "a table", other),
+            _ => self.wrong_type(value, &path, "a table", ""),
         }
     }
 
-    /// The named tables under a key, with their names checked.
-    pub fn named<'a>(&mut self, root: &Row<'a>, key: &str) -> Vec<(String, Range<usize>, Row<'a>)> {
-        let Some(value) = root.table.get(key) else { return Vec::new() };
-        let Some(group) = self.row(value, key) else { return Vec::new() };
-        let mut rows = Vec::new();
-        for (name, value) in group.table.iter() {
-            let text = name.get_ref().to_string();
-            if !is_name(&text) {
-                self.fault(
-                    name.span(),
-                    format!("\"{}\" cannot be a name", clip(&text)),
-                    "a name is a letter and up to fifteen letters, digits or underscores; start and end are reserved",
-                );
-            }
-            if let Some(row) = self.row(value, format!("{key}.{}", clip(&text))) {
-                rows.push((text, name.span(), row));
-            }
-        }
-        if rows.len() > 2_000 {
-            self.fault(value.span(), format!("more than 2,000 tables under {key}"), "split the deck");
-            rows.truncate(2_000);
-        }
-        rows
-    }
-
-    /// The items of a list.
+    /// The items of a list; at most 20,000, which is some loads on each of a thousand spans.
     pub fn items<'a>(&mut self, value: Value<'a>, key: &str) -> Vec<Value<'a>> {
-        match value.get_ref() {
-            DeValue::Array(list) => list.iter().collect(),
-            other => self.wrong_type(value, key, "a list", other).unwrap_or_default(),
+        self.list(value, key, 20_000, "write it in square brackets")
+    }
+
+    /// The tables under `[[key]]`, at most `most`.
+    pub fn tables<'a>(&mut self, value: Value<'a>, key: &str, most: usize) -> Vec<Value<'a>> {
+        self.list(value, key, most, &format!("write [[{key}]] with two brackets"))
+    }
+
+    fn list<'a>(&mut self, value: Value<'a>, key: &str, most: usize, hint: &str) -> Vec<Value<'a>> {
+        let DeValue::Array(list) = value.get_ref() else {
+            return self.wrong_type(value, key, "a list", hint).unwrap_or_default();
+        };
+        if let Some(first) = list.get(most) {
+            self.fault(first.span(), format!("more than {most} items in {key}"), "split the deck");
         }
-    }
-}
-
-/// A long text cut short for a message.
-pub fn clip(text: &str) -> String {
-    let mut short: String = text.chars().take(40).collect();
-    if short.len() < text.len() {
-        short.push('…');
-    }
-    short
-}
-
-fn is_name(text: &str) -> bool {
-    let mut letters = text.chars();
-    let first = letters.next().is_some_and(|letter| letter.is_ascii_alphabetic());
-    first
-        && text.len() <= 16
-        && letters.all(|l| l.is_ascii_alphanumeric() || l == '_')
-        && text != "start"
-        && text != "end"
-}
-
-/// A radian may be left out of a rotational stiffness.
-fn fits(found: Dimension, wanted: Dimension) -> bool {
-    found == wanted || (wanted.angle == -1 && found == Dimension { angle: 0, ..wanted })
-}
-
-/// What a dimension is called.
-fn name_of(dimension: Dimension) -> &'static str {
-    describe(dimension).0
-}
-
-fn example(dimension: Dimension) -> &'static str {
-    describe(dimension).1
-}
-
-fn describe(d: Dimension) -> (&'static str, &'static str) {
-    match [d.force, d.length, d.mass, d.temperature, d.angle] {
-        [0, 1, 0, 0, 0] => ("length", "3.5 m"),
-        [0, 2, 0, 0, 0] => ("area", "53.8 cm^2"),
-        [0, 4, 0, 0, 0] => ("second moment of area", "8356 cm^4"),
-        [1, 0, 0, 0, 0] => ("force", "12 kN"),
-        [1, 1, 0, 0, 0] => ("moment", "5 kN m"),
-        [1, -1, 0, 0, 0] => ("force per length", "8.5 kN/m"),
-        [1, -2, 0, 0, 0] => ("stress or load per area", "3.5 kN/m^2"),
-        [1, -3, 0, 0, 0] => ("weight per volume", "490 pcf"),
-        [0, -3, 1, 0, 0] => ("mass per volume", "7850 kg/m^3"),
-        [0, -1, 1, 0, 0] => ("mass per length", "42.2 kg/m"),
-        [1, 1, 0, 0, -1] => ("moment per turn", "5 MN m/rad"),
-        [0, 0, 0, 0, 1] => ("angle", "2 mrad"),
-        [0, 0, 0, 1, 0] => ("difference of temperature", "20 K"),
-        [0, 0, 0, -1, 0] => ("thermal expansion", "12e-6 1/K"),
-        _ => ("the quantity wanted here", "1 m"),
+        list.iter().take(most).collect()
     }
 }

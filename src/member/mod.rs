@@ -10,7 +10,7 @@ mod record;
 
 pub use crate::quantity::{Factor, Place};
 pub use load::{Case, Load, LoadKind, Nature, Stretch};
-pub use record::{Assumption, Declared, Part, Record, Revision, SheetWishes};
+pub use record::{Assumption, Decimals, Declared, Part, Record, Revision, SheetWishes};
 
 use std::collections::BTreeMap;
 
@@ -57,6 +57,11 @@ impl Member {
     /// The right end of the member; its left end is at zero.
     pub fn end(&self) -> Place {
         self.segments.last().map_or(Place::ZERO, |segment| segment.to)
+    }
+
+    /// A sentence for every value and assumption that waits for confirmation.
+    pub fn unconfirmed(&self) -> Vec<String> {
+        self.record.unconfirmed()
     }
 
     /// Degree of static indeterminacy: restraints held, less two equations of equilibrium, less one for each hinge.

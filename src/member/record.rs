@@ -74,10 +74,52 @@ pub struct Declared {
 pub struct SheetWishes {
     /// Letter paper instead of A4.
     pub letter: Option<bool>,
-    /// The number of the first sheet.
+    /// The number of the first sheet, 1 to 9999.
     pub first_sheet: Option<usize>,
     /// The short form instead of the full one.
     pub brief: Option<bool>,
+    /// Decimals of the figures that are not part of the working's arithmetic.
+    pub decimals: Decimals,
+    /// A comma instead of a point before the decimals.
+    pub decimal_comma: bool,
+}
+
+/// Decimals asked for by quantity, 0 to 9 each, in the unit the quantity is printed in; `None` where the sheet chooses.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Default)]
+pub struct Decimals {
+    /// Forces, shear, reactions: kN or kip.
+    pub force: Option<u8>,
+    /// Moments: kN m or kip ft.
+    pub moment: Option<u8>,
+    /// Deflections and settlements: mm or in.
+    pub deflection: Option<u8>,
+    /// Turns and slopes: mrad.
+    pub turn: Option<u8>,
+    /// Places and lengths: m or ft.
+    pub length: Option<u8>,
+    /// Loads per length: kN/m or kip/ft.
+    pub intensity: Option<u8>,
+    /// Demand over what is allowed.
+    pub utilisation: Option<u8>,
+}
+
+impl Decimals {
+    /// The deck's word for each quantity.
+    pub const KEYS: [&'static str; 7] = ["force", "moment", "deflection", "turn", "length", "intensity", "utilisation"];
+
+    /// The decimals of a quantity by the deck's word for it.
+    pub(super) fn slot(&mut self, key: &str) -> Option<&mut Option<u8>> {
+        Some(match key {
+            "force" => &mut self.force,
+            "moment" => &mut self.moment,
+            "deflection" => &mut self.deflection,
+            "turn" => &mut self.turn,
+            "length" => &mut self.length,
+            "intensity" => &mut self.intensity,
+            "utilisation" => &mut self.utilisation,
+            _ => return None,
+        })
+    }
 }
 
 impl Record {
@@ -86,25 +128,25 @@ impl Record {
         self.declared.iter().find(|declared| declared.part == part)
     }
 
-    /// A sentence for every value and assumption that waits for confirmation.
+    /// A sentence for every value and assumption that waits for confirmation, in the order of the deck's tables:
+    /// sections, segments, supports, loads, limits, assumptions.
     pub fn unconfirmed(&self) -> Vec<String> {
+        let waiting = |source: &str| {
+            let source = source.trim().trim_end_matches('.');
+            let source = if source.is_empty() { String::new() } else { format!(" (source: {source})") };
+            format!("waits for confirmation{source}")
+        };
         let values = self.declared.iter().filter(|declared| declared.confirm).map(|declared| {
             let mut words = declared.words.clone();
             if let Some(first) = words.get_mut(0..1) {
                 first.make_ascii_uppercase();
             }
-            if declared.source.is_empty() {
-                format!("{words}, without a source.")
-            } else {
-                format!("{words}, source: {}.", declared.source.trim_end_matches('.'))
-            }
+            format!("{words}: {}.", waiting(&declared.source))
         });
-        let assumed = self.assumptions.iter().filter(|assumption| assumption.confirm).map(|assumption| {
-            if assumption.source.is_empty() {
-                assumption.text.clone()
-            } else {
-                format!("{} (source: {})", assumption.text, assumption.source)
-            }
+        let assumed = self.assumptions.iter().enumerate().filter(|(_, assumption)| assumption.confirm);
+        let assumed = assumed.map(|(index, assumption)| {
+            let text = assumption.text.trim().trim_end_matches('.');
+            format!("Assumption {}: {}: {text}.", index + 1, waiting(&assumption.source))
         });
         values.chain(assumed).collect()
     }

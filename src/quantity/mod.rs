@@ -3,11 +3,13 @@
 
 mod decimal;
 mod parse;
+mod parse_unit;
 mod place;
 mod unit;
 
 pub use decimal::Decimal;
-pub use parse::{QuantityFault, parse_quantity, parse_unit};
+pub use parse::{QuantityFault, parse_placed, parse_quantity};
+pub use parse_unit::parse_unit;
 pub use place::Place;
 pub use unit::{Atom, Dimension, KNOWN, PCI, Unit};
 
@@ -39,6 +41,15 @@ pub struct Given<T> {
     pub typed: Typed,
 }
 
+/// A pure number as typed.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Factor {
+    /// Its value.
+    pub value: f64,
+    /// As typed; zero for a case the combination does not name.
+    pub figure: Decimal,
+}
+
 macro_rules! quantities {
     ($($(#[$doc:meta])* $name:ident: $force:literal $length:literal $mass:literal $temperature:literal $angle:literal;)*) => {$(
         $(#[$doc])*
@@ -63,6 +74,10 @@ macro_rules! quantities {
             fn from_si(si: f64) -> Option<Self> {
                 Self::new(si)
             }
+
+            fn to_si(&self) -> f64 {
+                self.0
+            }
         }
     )*};
 }
@@ -73,6 +88,8 @@ pub trait Physical: Sized {
     const DIMENSION: Dimension;
     /// From SI base units; `None` when not finite.
     fn from_si(si: f64) -> Option<Self>;
+    /// In SI base units.
+    fn to_si(&self) -> f64;
 }
 
 quantities! {
@@ -104,13 +121,4 @@ quantities! {
     TemperatureDifference: 0 0 0 1 0;
     /// A strain per temperature, 1/K.
     Expansion: 0 0 0 -1 0;
-}
-
-/// A factor as typed.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Factor {
-    /// Its value.
-    pub value: f64,
-    /// As typed; zero for a case the combination does not name.
-    pub figure: crate::quantity::Decimal,
 }

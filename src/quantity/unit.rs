@@ -131,12 +131,16 @@ impl Unit {
 
     /// The dimension of the product.
     pub fn dimension(&self) -> Dimension {
-        self.factors.iter().fold(Dimension::default(), |sum, (atom, power)| Dimension {
-            force: sum.force + atom.dimension.force * power,
-            length: sum.length + atom.dimension.length * power,
-            mass: sum.mass + atom.dimension.mass * power,
-            temperature: sum.temperature + atom.dimension.temperature * power,
-            angle: sum.angle + atom.dimension.angle * power,
+        // Saturating: a unit put together by hand may have powers beyond those that a deck may use.
+        self.factors.iter().fold(Dimension::default(), |sum, (atom, power)| {
+            let add = |sum: i8, one: i8| sum.saturating_add(one.saturating_mul(*power));
+            Dimension {
+                force: add(sum.force, atom.dimension.force),
+                length: add(sum.length, atom.dimension.length),
+                mass: add(sum.mass, atom.dimension.mass),
+                temperature: add(sum.temperature, atom.dimension.temperature),
+                angle: add(sum.angle, atom.dimension.angle),
+            }
         })
     }
 
@@ -196,6 +200,13 @@ mod tests {
         let klf = unit(&[("kip", 1), ("ft", -1)]).si().unwrap_or(0.0);
         assert!((klf / 14.593_903e3 - 1.0).abs() < 1e-7);
         assert_eq!(unit(&[("klf", 1)]).si(), Some(klf));
+    }
+
+    #[test]
+    fn no_power_overflows() {
+        let beyond = unit(&[("pcf", 127), ("pcf", 127), ("kg", -128)]);
+        assert_eq!(beyond.dimension().length, i8::MIN);
+        assert_eq!(beyond.si(), None);
     }
 
     #[test]

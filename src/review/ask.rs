@@ -1,9 +1,8 @@
 //! Questions that a claim answers, and their answers on any solved member.
 
 use crate::analysis::action::Action;
-use crate::analysis::extreme::span_ends;
 use crate::analysis::{Analysis, Field, Solution, Values};
-use crate::member::{Measured, Member, Place, Redundant, Span};
+use crate::member::{Limit, Measured, Member, Place, Redundant, Span};
 use crate::verdict;
 
 /// Which load state a claim speaks of.
@@ -81,14 +80,14 @@ pub enum Ask {
     Allowable {
         /// The span's name.
         span: String,
-        /// The limit's name; the only one, or the one that governs, where none is named.
+        /// The limit's name; the smallest that limits the combination, where none is named.
         limit: Option<String>,
     },
     /// Utilisation of a limit over a span.
     Utilisation {
         /// The span's name.
         span: String,
-        /// The limit's name.
+        /// The limit's name; the greatest share of any, where none is named.
         limit: Option<String>,
     },
     /// 1.0 where the limits hold, 0.0 where one fails.
@@ -151,13 +150,16 @@ pub fn evaluate(question: &Question, member: &Member, analysis: &Analysis) -> Re
                 .ok_or_else(|| none(format!("no redundant {name}")))
         }
         Ask::Station { along, at, side, measured } => {
+            if *at < Place::ZERO || *at > member.end() {
+                return Err(none(format!("the member ends at {} m", member.end().exact())));
+            }
             let value = pick(&field.at(*at), *along, *side);
             if *along != Along::Deflection || *measured == Measured::Absolute {
                 return Ok(value);
             }
             let span = member.spans.iter().find(|span| span.from <= *at && *at <= span.to);
             let span = span.ok_or_else(|| none("the place lies in no span"))?;
-            let (base, slope) = line(&field, span);
+            let (base, slope) = verdict::reference(&field, Measured::Chord, span);
             Ok(value - base - slope * at.beyond(span.from))
         }
         Ask::Extreme { along, span, max, measured } => {
@@ -165,24 +167,26 @@ pub fn evaluate(question: &Question, member: &Member, analysis: &Analysis) -> Re
             Ok(extreme(&field, span, *along, *max, *measured))
         }
         Ask::Allowable { span, limit } => {
-            let span = find_span(member, span)?;
-            let limits = member.limits.iter().filter(|l| limit.as_ref().is_none_or(|name| l.name == *name));
-            let covers = limits.filter(|l| l.spans.iter().any(|s| member.spans.get(*s) == Some(span)));
-            covers.map(|l| verdict::allowable(l, span)).reduce(f64::min).ok_or_else(|| none("no limit covers the span"))
+            let over = find_span(member, span)?;
+            let covering = covering(question, member, Some(span), limit.as_deref())?;
+            let allowed = covering.iter().map(|(limit, _)| verdict::allowable(limit, over));
+            allowed.reduce(f64::min).ok_or_else(|| none(UNLIMITED))
         }
         Ask::Utilisation { span, limit } => {
-            let checks = checks(question, member, analysis, Some(span), limit.as_ref())?;
-            checks.iter().map(|check| check.0).reduce(f64::max).ok_or_else(|| none("no limit covers this"))
+            let checks = checks(question, member, &field, Some(span), limit.as_deref())?;
+            checks.iter().map(|check| check.0).reduce(f64::max).ok_or_else(|| none(UNLIMITED))
         }
         Ask::Verdict { span, limit } => {
-            let checks = checks(question, member, analysis, span.as_deref(), limit.as_ref())?;
+            let checks = checks(question, member, &field, span.as_deref(), limit.as_deref())?;
             if checks.is_empty() {
-                return Err(none("no limit covers this"));
+                return Err(none(UNLIMITED));
             }
             Ok(if checks.iter().all(|check| check.1) { 1.0 } else { 0.0 })
         }
     }
 }
+
+const UNLIMITED: &str = "no limit of the deck covers this span in this combination";
 
 fn state<'a>(of: &Of, member: &'a Member, analysis: &'a Analysis) -> Result<(Field<'a>, &'a Solution), NotComparable> {
     match of {
@@ -229,22 +233,11 @@ fn pick(values: &Values, along: Along, side: Side) -> f64 {
     }
 }
 
-/// The line that a span's deflections are measured from: its height at the span's left end and its slope.
-fn line(field: &Field<'_>, span: &Span) -> (f64, f64) {
-    let (left, right) = span_ends(field, span);
-    match (span.left, span.right) {
-        (Some(_), Some(_)) => (left, (right - left) / span.to.beyond(span.from)),
-        (Some(_), None) => (left, 0.0),
-        (None, Some(_)) => (right, 0.0),
-        (None, None) => (0.0, 0.0),
-    }
-}
-
 fn extreme(field: &Field<'_>, span: &Span, along: Along, max: bool, measured: Measured) -> f64 {
     let sign = if max { 1.0 } else { -1.0 };
     let mut best = f64::NEG_INFINITY;
-    let chord = along == Along::Deflection && measured == Measured::Chord;
-    let (base, slope) = if chord { line(field, span) } else { (0.0, 0.0) };
+    let measured = if along == Along::Deflection { measured } else { Measured::Absolute };
+    let (base, slope) = verdict::reference(field, measured, span);
     for (index, piece) in field.model.pieces.iter().enumerate() {
         if piece.from < span.from || piece.to > span.to {
             continue;
@@ -306,20 +299,34 @@ fn golden(from: f64, to: f64, value: impl Fn(f64) -> f64) -> f64 {
     value((low + high) / 2.0)
 }
 
+/// The limits, each with the span, that apply to the question's combination.
+fn covering<'m>(
+    question: &Question,
+    member: &'m Member,
+    span: Option<&str>,
+    limit: Option<&str>,
+) -> Result<Vec<(&'m Limit, &'m Span)>, NotComparable> {
+    let Of::Combination(name) = &question.of else { return Err(none("limits apply to combinations, not to cases")) };
+    let index = member.combinations.iter().position(|combination| combination.name == *name);
+    let index = index.ok_or_else(|| none(format!("the member has no combination {name}")))?;
+    let limits = member.limits.iter().filter(|known| known.combinations.contains(&index));
+    let limits = limits.filter(|known| limit.is_none_or(|name| known.name == name));
+    let pairs = limits.flat_map(|limit| {
+        let spans = limit.spans.iter().filter_map(|index| member.spans.get(*index));
+        spans.map(move |over| (limit, over))
+    });
+    Ok(pairs.filter(|(_, over)| span.is_none_or(|name| over.name == name)).collect())
+}
+
+/// Utilisation and verdict of every limit that the question covers.
 fn checks(
     question: &Question,
     member: &Member,
-    analysis: &Analysis,
+    field: &Field<'_>,
     span: Option<&str>,
-    limit: Option<&String>,
+    limit: Option<&str>,
 ) -> Result<Vec<(f64, bool)>, NotComparable> {
-    let Of::Combination(name) = &question.of else { return Err(none("limits apply to combinations")) };
-    let all = verdict::weigh(member, analysis).checks;
-    let wanted = all.iter().filter(|check| {
-        let named = |found: Option<&str>, wanted: Option<&str>| wanted.is_none_or(|wanted| found == Some(wanted));
-        named(member.combinations.get(check.combination).map(|c| c.name.as_str()), Some(name))
-            && named(member.spans.get(check.span).map(|s| s.name.as_str()), span)
-            && named(member.limits.get(check.limit).map(|l| l.name.as_str()), limit.map(String::as_str))
-    });
-    Ok(wanted.map(|check| (check.utilisation, check.pass)).collect())
+    let covering = covering(question, member, span, limit)?;
+    let found = covering.into_iter().map(|(limit, over)| verdict::check(field, limit, over, (0, 0, 0)));
+    Ok(found.map(|check| (check.utilisation, check.pass)).collect())
 }

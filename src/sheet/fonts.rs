@@ -90,7 +90,8 @@ pub fn missing_glyph(text: &str) -> Option<char> {
 }
 
 fn printable(character: char) -> bool {
-    if matches!(character, '\n' | '\r' | '\t') {
+    // Every face holds the printable ASCII characters, as a test makes sure; most of a sheet is made of them.
+    if matches!(character, '\n' | '\r' | '\t' | ' '..='~') {
         return true;
     }
     let has = |index: usize| FACES.get(index).is_some_and(|font| font.glyph_index(character).is_some());
@@ -107,7 +108,16 @@ const fn invisible(character: char) -> bool {
 
 #[cfg(test)]
 mod tests {
-    use super::{Face, advance, count, missing_glyph};
+    use super::{FACES, Face, advance, count, missing_glyph};
+
+    #[test]
+    fn every_face_holds_printable_ascii() {
+        for (index, face) in FACES.iter().enumerate().take(4) {
+            for character in ' '..='~' {
+                assert!(face.glyph_index(character).is_some(), "face {index} lacks {character:?}");
+            }
+        }
+    }
 
     #[test]
     fn every_embedded_file_is_a_font() {

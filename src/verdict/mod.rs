@@ -104,8 +104,14 @@ pub fn weigh(member: &Member, analysis: &Analysis) -> Verdict {
     verdict
 }
 
-fn check(field: &Field<'_>, limit: &Limit, span: &Span, (index, combination, place): (usize, usize, usize)) -> Check {
-    let (base, slope) = reference(field, limit, span);
+/// One limit over one span in the state of `field`; the indices of limit, combination and span go into the check as given.
+pub fn check(
+    field: &Field<'_>,
+    limit: &Limit,
+    span: &Span,
+    (index, combination, place): (usize, usize, usize),
+) -> Check {
+    let (base, slope) = reference(field, limit.measured, span);
     let found = field.greatest_from(span, base, slope);
     let allowable = allowable(limit, span);
     let utilisation = sums::utilisation(found.value, allowable);
@@ -122,9 +128,9 @@ fn check(field: &Field<'_>, limit: &Limit, span: &Span, (index, combination, pla
     }
 }
 
-/// The line that deflections are measured from: its height at the span's start and its slope.
-fn reference(field: &Field<'_>, limit: &Limit, span: &Span) -> (f64, f64) {
-    if limit.measured == Measured::Absolute {
+/// The line that a span's deflections are measured from: its height at the span's start, m, and its slope.
+pub fn reference(field: &Field<'_>, measured: Measured, span: &Span) -> (f64, f64) {
+    if measured == Measured::Absolute {
         return (0.0, 0.0);
     }
     let (left, right) = (field.at(span.from).v, field.at(span.to).v);

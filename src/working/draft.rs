@@ -3,6 +3,7 @@
 use std::collections::BTreeMap;
 
 use super::exact::Exact;
+use super::replay::Replay;
 use super::trace::{Source, Traced};
 use super::units::{Base, What, conversion};
 use crate::quantity::{Decimal, Typed, Unit};
@@ -117,29 +118,8 @@ pub struct DraftChapter {
 /// Where new steps go: a chapter and a block.
 pub type Slot = (usize, usize);
 
-/// A fault of the program: a step whose replay differs from the analysis.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Mismatch {
-    /// Title of the step.
-    pub title: String,
-    /// The analysis's value.
-    pub expected: f64,
-    /// The replay's.
-    pub found: f64,
-}
-
 /// Quantity and unit: figures of one class are rounded alike.
 pub type Class = (What, String);
-
-/// A replay in `f64`, kept until every figure of its class is known.
-#[derive(Debug)]
-struct Replay {
-    title: String,
-    class: Class,
-    expected: f64,
-    found: f64,
-    scale: f64,
-}
 
 /// Writes steps.
 #[derive(Debug)]
@@ -152,7 +132,7 @@ pub struct Builder {
     pub figures: Vec<DeckFigure>,
     /// Chapters in the order shown.
     pub chapters: Vec<DraftChapter>,
-    replays: Vec<Replay>,
+    pub(super) replays: Vec<Replay>,
     slot: Slot,
     tag: String,
     factors: BTreeMap<String, Traced>,
@@ -334,30 +314,12 @@ impl Builder {
         let (found, scale) = (expression.value(&of), expression.scale(&of));
         self.replays.push(Replay {
             title: finding.title.clone(),
+            tagged: !self.tag.is_empty(),
             class: (finding.what, finding.unit.to_string()),
             expected: finding.value,
             found,
             scale,
         });
-    }
-
-    /// Replays that differ from the analysis by more than 1e-12 of their scale: the greatest of their terms and of the
-    /// figures of their quantity. Each is a fault of the program.
-    pub fn mismatches(&self) -> Vec<Mismatch> {
-        let mut greatest: BTreeMap<&Class, f64> = BTreeMap::new();
-        for replay in self.replays.iter().filter(|replay| replay.class.0 != What::Other) {
-            let size = greatest.entry(&replay.class).or_default();
-            *size = size.max(replay.expected.abs());
-        }
-        let differs = |replay: &&Replay| {
-            let known = greatest.get(&replay.class).copied().unwrap_or_default();
-            let scale = replay.scale.max(known).max(replay.expected.abs());
-            let close = (replay.found - replay.expected).abs() <= 1e-12 * scale;
-            !close
-        };
-        let mismatch =
-            |replay: &Replay| Mismatch { title: replay.title.clone(), expected: replay.expected, found: replay.found };
-        self.replays.iter().filter(differs).map(mismatch).collect()
     }
 
     /// A figure typed in the deck, put into the working's unit: one step, with its conversion where one is needed.

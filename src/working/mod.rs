@@ -9,11 +9,12 @@ mod gather;
 mod name;
 mod narrate;
 mod notation;
+mod replay;
 mod step;
 mod trace;
 mod units;
 
-pub use draft::Mismatch;
 pub use finish::letter as column_letter;
 pub use narrate::{Demand, narrate, place_names};
+pub use replay::Mismatch;
 pub use step::{Block, Body, Chapter, Chapters, Figure, Grid, Input, Origin, Step, Working};

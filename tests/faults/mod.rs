@@ -66,6 +66,6 @@ fn all_faults_of_a_deck_are_reported_in_one_run() {
 fn redundants_are_checked() {
     let choose = |list: &str| format!("[member]\nredundants = [{list}]\n\n[support.A]");
     one(&[("[support.A]", &choose("\"R.A\", \"R.B\""))], "R.B cannot be released as well");
-    one(&[("[support.A]", &choose(""))], "the member has 1 redundants, but 0 are chosen");
+    one(&[("[support.A]", &choose(""))], "the member has 1 redundant, but 0 are chosen");
     assert!(faults(&[("[support.A]", &choose("\"M.A\""))]).is_empty());
 }

@@ -133,7 +133,7 @@ fn a_truncation_and_a_rounded_coefficient_agree_with_a_remark() {
     let exact = one(&propped, &format!("{lines}\nvalue = \"13.87 mm\""));
     assert_eq!((exact.status, exact.remark.as_str()), (Status::Agrees, ""));
     // 3230.77 written as 3230.7: its last digit was cut off.
-    let heavy = propped.replace("10 kN/m", "2153.846666 N/m").replace("length = \"4 m\"", "length = \"4 m\"");
+    let heavy = propped.replace("10 kN/m", "2153.846666 N/m");
     let cut = one(&heavy, "quantity = \"reaction\"\nat = \"E\"\ncombination = \"C\"\nvalue = \"3230.7 N\"");
     assert_eq!(cut.status, Status::Agrees);
     assert!(cut.remark.contains("cut off"), "{}", cut.remark);

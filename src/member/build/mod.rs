@@ -1,19 +1,28 @@
 //! From a deck's text to a valid member: everything it names is checked before anything is solved.
+//!
+//! One mistake is one fault: what could not be read is remembered by name, so that nothing that needs it is reported as
+//! well, while everything else is still checked.
 
 mod actions;
 mod asked;
-mod geometry;
+mod limits;
+mod loads;
+mod odd;
 mod record;
+mod sections;
+mod segments;
+mod supports;
+mod title;
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 use std::ops::Range;
 
 use toml::de::{DeTable, DeValue};
 
-use super::{Member, Place, System, Title};
-use crate::deck::{LONGEST, Reader, Row};
-use crate::diagnostic::{Diagnostic, Severity};
-use crate::quantity::Typed;
+use super::{Member, Place, Title};
+use crate::deck::{LONGEST, Names, Reader, Row, Value};
+use crate::diagnostic::Diagnostic;
+use crate::quantity::{Decimal, Typed};
 
 /// A member and where in the file its names stand, for findings that need more than one of them.
 #[derive(Clone, Debug)]
@@ -24,20 +33,48 @@ pub struct Reading {
     pub supports: Vec<Range<usize>>,
     /// Places of the chosen redundants' names, in the order typed.
     pub redundants: Vec<Range<usize>>,
-    /// The place of the table of redundants, or of the whole deck.
+    /// The place of the list of redundants; of the beginning of the deck where there is none.
     pub whole: Range<usize>,
+}
+
+/// What could be read of a deck.
+#[derive(Clone, Debug)]
+pub struct Attempt {
+    /// The member; of use as a whole only where there are no faults.
+    pub reading: Reading,
+    /// Every fault, in the order of the file.
+    pub faults: Vec<Diagnostic>,
+    /// Whether its segments, supports and hinges are what the deck means, whatever else is at fault.
+    pub geometry: bool,
+    /// Whether its redundants are.
+    pub redundants: bool,
 }
 
 /// What is being put together.
 struct Build<'t> {
     reader: Reader<'t>,
     member: Member,
+    sections: Names,
+    supports: Names,
+    cases: Names,
+    combinations: Names,
+    spans: Names,
+    /// What could not be read of a section: its index and the key.
+    unsure: BTreeSet<(usize, &'static str)>,
+    /// Sections that have been reported for lacking what a load needs, with what that is.
+    lacking: BTreeSet<(usize, &'static str)>,
+    /// Cases that a combination counts with a factor of zero, written out.
+    zeroed: BTreeSet<usize>,
     support_spans: Vec<Range<usize>>,
     redundant_spans: Vec<Range<usize>>,
-    /// Whether the spans are what the deck means: a fault among the supports would make others of them.
-    spans_known: bool,
-    /// Whether the member's length is what the deck means: a fault among the segments would make another of it.
+    whole: Range<usize>,
+    /// The right end; beyond everything where a fault among the segments hides it.
+    end: Place,
     length_known: bool,
+    supports_known: bool,
+    hinges_known: bool,
+    redundants_known: bool,
+    purposes_known: bool,
 }
 
 /// Reads a deck.
@@ -45,41 +82,57 @@ struct Build<'t> {
 /// # Errors
 /// Every fault of the deck, each with its place; where the TOML itself is broken, that alone.
 pub fn read(text: &str) -> Result<Reading, Vec<Diagnostic>> {
-    let whole = 0..text.len().min(1);
+    let attempt = attempt(text);
+    if attempt.faults.is_empty() { Ok(attempt.reading) } else { Err(attempt.faults) }
+}
+
+/// Reads as much of a deck as can be read.
+pub fn attempt(text: &str) -> Attempt {
+    let whole = 0..text.chars().next().map_or(0, char::len_utf8);
+    let nothing = |faults: Vec<Diagnostic>| Attempt {
+        reading: Reading { member: empty(), supports: Vec::new(), redundants: Vec::new(), whole: whole.clone() },
+        faults,
+        geometry: false,
+        redundants: false,
+    };
     if text.len() > LONGEST {
-        return Err(vec![Diagnostic::error(whole, "the deck is longer than 2,000,000 bytes").hint("split it")]);
+        let message = format!("the deck is longer than {LONGEST} bytes");
+        return nothing(vec![Diagnostic::error(whole.clone(), message).hint("split it")]);
     }
     let (tree, errors) = DeTable::parse_recoverable(text);
     if !errors.is_empty() {
-        return Err(errors.iter().map(|error| broken(error, text)).collect());
+        return nothing(crate::deck::broken(text, &errors));
     }
     let root = Row { table: tree.get_ref(), span: whole.clone(), path: "the deck".to_owned() };
     let mut build = Build {
         reader: Reader::new(text),
         member: empty(),
+        sections: Names::new("section"),
+        supports: Names::new("support"),
+        cases: Names::new("case"),
+        combinations: Names::new("combination"),
+        spans: Names::new("span"),
+        unsure: BTreeSet::new(),
+        lacking: BTreeSet::new(),
+        zeroed: BTreeSet::new(),
         support_spans: Vec::new(),
         redundant_spans: Vec::new(),
-        spans_known: true,
+        whole,
+        end: Place::ZERO,
         length_known: true,
+        supports_known: true,
+        hinges_known: true,
+        redundants_known: true,
+        purposes_known: true,
     };
     build.root(&root);
-    let Build { reader, mut member, support_spans, redundant_spans, .. } = build;
-    let (faults, warnings): (Vec<Diagnostic>, Vec<Diagnostic>) =
-        reader.findings.into_iter().partition(|finding| finding.severity == Severity::Error);
-    if !faults.is_empty() {
-        let mut faults = faults;
-        faults.sort_by_key(|fault| fault.span.as_ref().map(|span| span.start));
-        return Err(faults);
-    }
+    let geometry = build.length_known && build.supports_known && build.hinges_known;
+    let (faults, warnings) = build.reader.sorted();
+    let mut member = build.member;
     member.warnings = warnings;
-    Ok(Reading { member, supports: support_spans, redundants: redundant_spans, whole })
-}
-
-fn broken(error: &toml::de::Error, text: &str) -> Diagnostic {
-    let span = error.span().unwrap_or(0..0);
-    let end = span.end.clamp(span.start.min(text.len()), text.len());
-    Diagnostic::error(span.start.min(text.len())..end, format!("not TOML: {}", error.message().trim()))
-        .hint("a deck is a TOML file; mend this first")
+    let reading =
+        Reading { member, supports: build.support_spans, redundants: build.redundant_spans, whole: build.whole };
+    Attempt { reading, faults, geometry, redundants: build.redundants_known }
 }
 
 fn empty() -> Member {
@@ -122,9 +175,7 @@ impl Build<'_> {
         self.format(root);
         self.title(root);
         self.sections(root);
-        let before = self.reader.findings.len();
         self.segments(root);
-        self.length_known = self.reader.findings.len() == before;
         self.supports(root);
         self.hinges(root);
         self.spans();
@@ -135,11 +186,15 @@ impl Build<'_> {
         self.revisions(root);
         self.assumptions(root);
         self.sheet_table(root);
-        self.oddities(root);
+        self.oddities();
     }
 
     fn format(&mut self, root: &Row<'_>) {
-        if let Some(value) = self.reader.required(root, "format")
+        if !self.reader.has(root, "format") {
+            let hint = "add format = 1 as the first line";
+            self.reader.fault(root.span.clone(), "the deck does not say its format", hint);
+        }
+        if let Some(value) = root.table.get("format")
             && let Some(format) = self.reader.number(value, "format")
             && format.value != 1.0
         {
@@ -147,55 +202,30 @@ impl Build<'_> {
         }
     }
 
-    fn title(&mut self, root: &Row<'_>) {
-        let Some(value) = self.reader.required(root, "title") else { return };
-        let Some(row) = self.reader.row(value, "title") else { return };
-        let keys = [
-            "project", "number", "subject", "revision", "date", "prepared", "checked", "approved", "client", "office",
-            "units",
-        ];
-        self.reader.known(&row, &keys);
-        let mut text = |key: &str| self.reader.required_text(&row, key).unwrap_or_default();
-        let title = Title {
-            project: text("project"),
-            number: text("number"),
-            subject: text("subject"),
-            revision: text("revision"),
-            ..Title::default()
-        };
-        let mut optional = |key: &str| self.reader.optional_text(&row, key).filter(|text| !text.trim().is_empty());
-        self.member.title = Title {
-            prepared: optional("prepared"),
-            checked: optional("checked"),
-            approved: optional("approved"),
-            client: optional("client"),
-            office: optional("office"),
-            ..title
-        };
-        if let Some(value) = self.reader.required(&row, "date") {
-            self.member.title.date = self.date(value).unwrap_or_default();
-        }
-        if let Some(value) = row.table.get("units") {
-            let words = [("SI", System::Si), ("US", System::Us)];
-            self.member.title.system = self.reader.word(value, "units", &words).unwrap_or_default();
-        }
-    }
-
     /// A place on the member; remembered as typed.
-    fn place(&mut self, value: crate::deck::Value<'_>, key: &str) -> Option<Place> {
-        let end = self.member.end();
-        if let DeValue::String(word) = value.get_ref()
-            && word == "end"
-        {
-            return Some(end);
+    fn place(&mut self, value: Value<'_>, key: &str) -> Option<Place> {
+        if let DeValue::String(word) = value.get_ref() {
+            if word == "end" {
+                return Some(self.end);
+            }
+            if !word.is_empty() && word.chars().all(char::is_alphabetic) {
+                let message = format!("{key} cannot be \"{}\"", crate::deck::clip(word));
+                self.reader.fault(value.span(), message, "a length from the left end, as in \"2.5 m\", or \"end\"");
+                return None;
+            }
         }
-        let (place, typed) = self.reader.metres(value, key)?;
-        if place < Place::ZERO || (place > end && self.length_known) {
-            let message = format!("{key} lies off the member, which runs from 0 to {} m", end.exact());
+        let (place, given) = self.reader.metres(value, key)?;
+        if place < Place::ZERO || place > self.end {
+            let reach = if self.length_known {
+                format!(", which runs from 0 to {} m", self.end.exact())
+            } else {
+                String::new()
+            };
+            let message = format!("{key} lies off the member{reach}");
             self.reader.fault(value.span(), message, "places are measured from the member's left end");
             return None;
         }
-        self.remember(place, typed);
+        self.remember(place, given.typed);
         Some(place)
     }
 
@@ -203,3 +233,6 @@ impl Build<'_> {
         self.member.typed_places.entry(place).or_insert(typed);
     }
 }
+
+/// Beyond every place that a deck may type.
+const FAR: Place = Place::metres(Decimal::new(1, 40));

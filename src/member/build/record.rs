@@ -1,10 +1,11 @@
 //! Revisions, assumptions, sources, and how the sheet is to be printed.
 
-use toml::de::DeValue;
-
 use super::Build;
-use crate::deck::{Row, Value};
-use crate::member::{Assumption, Declared, Part, Revision};
+use crate::deck::Row;
+use crate::member::{Assumption, Decimals, Declared, Part, Revision};
+
+/// The most revisions and the most assumptions.
+const MOST: usize = 1_000;
 
 impl Build<'_> {
     /// The source of a part of the deck, and whether it waits for confirmation.
@@ -18,15 +19,30 @@ impl Build<'_> {
 
     pub(super) fn revisions(&mut self, root: &Row<'_>) {
         let Some(value) = root.table.get("revision") else { return };
-        for (index, item) in self.reader.items(value, "revision").into_iter().enumerate() {
+        let mut last: Option<Revision> = None;
+        for (index, item) in self.reader.tables(value, "revision", MOST).into_iter().enumerate() {
             let Some(row) = self.reader.row(item, format!("revision {}", index + 1)) else { continue };
             self.reader.known(&row, &["letter", "date", "what", "why", "moved"]);
             let letter = self.reader.required_text(&row, "letter").unwrap_or_default();
-            let date = self.reader.required(&row, "date").and_then(|value| self.date(value)).unwrap_or_default();
+            let date = self.reader.required(&row, "date").and_then(|value| self.reader.date(value, "date"));
             let what = self.reader.required_text(&row, "what").unwrap_or_default();
             let why = self.reader.required_text(&row, "why").unwrap_or_default();
             let moved = self.reader.optional_text(&row, "moved").unwrap_or_default();
-            self.member.record.revisions.push(Revision { letter, date, what, why, moved });
+            let revision = Revision { letter, date: date.unwrap_or_default(), what, why, moved };
+            if self.member.record.revisions.iter().any(|other| other.letter == revision.letter)
+                && let Some(value) = row.table.get("letter")
+            {
+                let message = format!("revision \"{}\" is told of twice", crate::deck::clip(&revision.letter));
+                self.reader.warn(value.span(), message, "each revision has its own letter");
+            }
+            if let (Some(last), Some(date), Some(value)) = (&last, date, row.table.get("date"))
+                && date < last.date
+            {
+                let message = format!("revision {} is dated before the one above it", index + 1);
+                self.reader.warn(value.span(), message, "revisions stand in the order of their dates");
+            }
+            last = Some(revision.clone());
+            self.member.record.revisions.push(revision);
         }
         let current = &self.member.title.revision;
         let revisions = &self.member.record.revisions;
@@ -39,7 +55,7 @@ impl Build<'_> {
 
     pub(super) fn assumptions(&mut self, root: &Row<'_>) {
         let Some(value) = root.table.get("assumption") else { return };
-        for (index, item) in self.reader.items(value, "assumption").into_iter().enumerate() {
+        for (index, item) in self.reader.tables(value, "assumption", MOST).into_iter().enumerate() {
             let Some(row) = self.reader.row(item, format!("assumption {}", index + 1)) else { continue };
             self.reader.known(&row, &["text", "confirm", "source"]);
             let text = self.reader.required_text(&row, "text").unwrap_or_default();
@@ -52,40 +68,40 @@ impl Build<'_> {
     pub(super) fn sheet_table(&mut self, root: &Row<'_>) {
         let Some(value) = root.table.get("sheet") else { return };
         let Some(row) = self.reader.row(value, "sheet") else { return };
-        self.reader.known(&row, &["paper", "first_sheet", "detail", "retention"]);
-        let wishes = &mut self.member.record.sheet;
-        wishes.letter = row
-            .table
-            .get("paper")
-            .and_then(|value| self.reader.word(value, "paper", &[("a4", false), ("letter", true)]));
-        wishes.brief = row
-            .table
-            .get("detail")
-            .and_then(|value| self.reader.word(value, "detail", &[("full", false), ("brief", true)]));
-        if let Some(value) = row.table.get("first_sheet")
-            && let Some(number) = self.reader.positive_number(value, "first_sheet")
-        {
-            if number.value <= 9999.0 && number.value.fract() == 0.0 {
-                self.member.record.sheet.first_sheet = Some(number.value as usize);
+        let keys = ["paper", "decimals", "decimal_comma", "first_sheet", "detail", "retention"];
+        self.reader.known(&row, &keys);
+        let papers = [("a4", false), ("letter", true)];
+        let letter = row.table.get("paper").and_then(|value| self.reader.word(value, "paper", &papers));
+        let details = [("full", false), ("brief", true)];
+        let brief = row.table.get("detail").and_then(|value| self.reader.word(value, "detail", &details));
+        let first = row.table.get("first_sheet");
+        let first = first.and_then(|value| self.reader.whole_number(value, "first_sheet", 1..=9999));
+        let decimals = self.decimals(&row);
+        let decimal_comma = self.reader.flag(&row, "decimal_comma");
+        let first_sheet = first.and_then(|number| usize::try_from(number).ok());
+        self.member.record.sheet = crate::member::SheetWishes { letter, first_sheet, brief, decimals, decimal_comma };
+        if let Some(value) = row.table.get("retention") {
+            if self.member.record.retention.is_some() {
+                let hint = "give it once, in the title";
+                self.reader.fault(value.span(), "retention is given in the title already", hint);
             } else {
-                self.reader.fault(value.span(), "first_sheet must be a whole number up to 9999", "");
+                self.member.record.retention = self.reader.optional_text(&row, "retention");
             }
         }
-        self.member.record.retention = self.reader.optional_text(&row, "retention");
     }
 
-    /// A date without a time.
-    pub(super) fn date(&mut self, value: Value<'_>) -> Option<(u16, u8, u8)> {
-        if let DeValue::Datetime(stamp) = value.get_ref()
-            && let (Some(date), None) = (stamp.date, stamp.time)
-        {
-            return Some((date.year, date.month, date.day));
+    /// Decimals by quantity.
+    fn decimals(&mut self, row: &Row<'_>) -> Decimals {
+        let mut decimals = Decimals::default();
+        let Some(value) = row.table.get("decimals") else { return decimals };
+        let Some(row) = self.reader.row(value, "sheet.decimals") else { return decimals };
+        self.reader.known(&row, &Decimals::KEYS);
+        for key in Decimals::KEYS {
+            let places = row.table.get(key).and_then(|value| self.reader.whole_number(value, key, 0..=9));
+            if let (Some(places), Some(slot)) = (places, decimals.slot(key)) {
+                *slot = u8::try_from(places).ok();
+            }
         }
-        self.reader.fault(
-            value.span(),
-            "date must be a TOML date without a time",
-            "write it without quotes: 2026-11-30",
-        );
-        None
+        decimals
     }
 }

@@ -3,6 +3,7 @@
 mod acts;
 mod cases;
 mod checks;
+mod closing;
 mod factored;
 mod given;
 mod place;
@@ -13,7 +14,8 @@ mod taper;
 
 pub use given::place_names;
 
-use super::draft::{Builder, Finding, Mismatch, Symbol};
+use super::draft::{Builder, Finding, Symbol};
+use super::replay::Mismatch;
 use super::step::Working;
 use super::trace::Traced;
 use super::units::{Base, What};

@@ -248,7 +248,6 @@ impl Teller<'_, '_, '_> {
         )
     }
 
-    #[expect(clippy::too_many_arguments, reason = "a holder, and everything that its force comes from")]
     fn far_force(
         &mut self,
         part: usize,
