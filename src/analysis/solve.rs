@@ -90,7 +90,7 @@ pub struct PieceEnds {
 
 /// Most corrections of the redundants.
 const CORRECTIONS: usize = 3;
-/// A correction that changes nothing a sheet could show.
+/// What may stay open at a release, relative to the greatest movement of its kind: nothing a sheet could show.
 const NEGLIGIBLE: f64 = 1e-13;
 
 /// Solves the member for every case and combination. `None` only for a mechanism or a bad choice of redundants, which
@@ -146,11 +146,10 @@ fn solve_case(solver: &Solver<'_>, flexibility: &Flexibility, case: usize) -> Op
                 imposed - movement(member, model, &whole, *redundant) - give(member, model, *redundant) * x
             })
             .collect();
-        let (_, corrections) = flexibility.solve(&open);
-        let size = |list: &[f64]| list.iter().fold(0.0_f64, |size, x| size.max(x.abs()));
-        if size(&corrections) <= NEGLIGIBLE * size(&redundants) {
+        if releases().zip(&open).all(|(redundant, open)| open.abs() <= NEGLIGIBLE * reach(&whole, *redundant)) {
             break;
         }
+        let (_, corrections) = flexibility.solve(&open);
         redundants.iter_mut().zip(&corrections).for_each(|(x, correction)| *x += correction);
         whole = whole_under(&redundants);
     }
@@ -172,6 +171,15 @@ fn solve_case(solver: &Solver<'_>, flexibility: &Flexibility, case: usize) -> Op
         redundants,
         total,
     })
+}
+
+/// The greatest movement of a state of the kind that a release makes: deflection at a force, turn at a moment.
+fn reach(state: &State, redundant: Redundant) -> f64 {
+    let movements = state.pieces.iter().map(|(_, piece)| match redundant {
+        Redundant::Force(_) => piece.end.v.abs().max(piece.start.v.abs()),
+        Redundant::Moment(_) => piece.end.psi.abs().max(piece.start.psi.abs()),
+    });
+    movements.fold(0.0, f64::max)
 }
 
 fn ends(pieces: &Window<PieceState>, index: usize) -> PieceEnds {

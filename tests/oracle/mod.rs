@@ -52,7 +52,11 @@ fn differences(beam: &Beam, results: &Value) -> Option<Vec<String>> {
     let greatest = |kind: &str| pairs.iter().filter(|pair| pair.0 == kind).map(|pair| pair.3.abs()).fold(0.0, f64::max);
     // A figure that is zero by equilibrium is measured by the load.
     let load = beam.load_size();
+    // Deflections are measured by the greatest of the whole member, wherever that stands.
+    let extremes = &combination["extremes"]["deflection"];
+    let deepest = ["max", "min"].map(|end| extremes[end]["value"].as_f64().unwrap().abs());
     let scale = |kind: &str| match kind {
+        "deflection" => greatest(kind).max(deepest[0]).max(deepest[1]),
         "force" => greatest(kind).max(load),
         "moment" => greatest(kind).max(load * 1e-3),
         _ => greatest(kind),
