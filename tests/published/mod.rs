@@ -7,6 +7,11 @@
 //! Signs are turned to the deck's: deflection down, turns clockwise, reaction moments counter-clockwise.
 //! Exact values are held to 1e-9 of their size, rounded ones to half a unit of their last digit.
 
+mod haunches;
+mod movements;
+mod patterns;
+mod steps;
+
 use crate::support::{deck, look, solve, with_hinges};
 
 const ONE: &[(f64, f64)] = &[(1.0, 1.0)];
@@ -255,32 +260,6 @@ fn stepped_members() {
         ("fixed, 2:1", fixed, FIXED, &point(1.0, 0.5), "m A", 5.0 / 33.0),
         ("fixed, 2:1", fixed, FIXED, &turn("A", 1.0), "m A", -80.0 / 11.0),
     ]);
-}
-
-/// A deck of one tapered segment from EI 2 to EI 1.
-fn tapered(law: &str, supports: &str, loads: &str) -> String {
-    let text = deck(&[(1.0, 2.0)], supports, loads, &[1.0]);
-    let tip = "[section.tip]\nE = \"1 kPa\"\nI = \"0.001 m^4\"\ndepth = \"1 m\"\nalpha = \"1 1/K\"\n";
-    text.replacen(
-        "section = \"s0\"\n",
-        &format!("section = \"s0\"\ntaper = {{ to = \"tip\", law = \"{law}\" }}\n{tip}"),
-        1,
-    )
-}
-
-#[test]
-fn tapered_members() {
-    let ln2 = 2.0_f64.ln();
-    // H2, n = 1: I_tip (1 + s) with s from the tip.
-    for (loads, exact) in
-        [(point(1.0, 1.0), ln2 - 0.5), (UNIFORM.to_owned(), 5.0 / 12.0 - 0.5 * ln2), (couple(1.0, 1.0), 1.0 - ln2)]
-    {
-        let found = look(&solve(&tapered("linear", CANTILEVER, &loads)), "v 1");
-        assert!((found - exact).abs() < 1e-11, "H2 {found} {exact}");
-    }
-    // H3: propped, thick at the fixed end.
-    let found = look(&solve(&tapered("linear", PROPPED, UNIFORM)), "R B");
-    assert!((found - 0.362_899_82).abs() < 5e-9, "H3 {found}");
 }
 
 #[test]
