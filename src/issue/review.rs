@@ -7,7 +7,7 @@ use crate::analysis;
 use crate::calculation::{Calculation, hexadecimal};
 use crate::issue::Wishes;
 use crate::member::{Member, System};
-use crate::quantity::{Decimal, Unit};
+use crate::quantity::{Decimal, Unit, parse_quantity};
 use crate::review::ask::{Along, Ask};
 use crate::review::search::{Explanation, Findings};
 use crate::review::{Claim, Claims, Compared, Status};
@@ -25,10 +25,12 @@ pub struct Reviewed<'a> {
     pub calculation: &'a Calculation,
     /// The checker's deck.
     pub deck: &'a str,
-    /// The file of claims.
+    /// Name of the file of claims.
     pub file: &'a str,
     /// Its text.
     pub text: &'a str,
+    /// Where the claims were taken from a sheet, its name and SHA-256.
+    pub sheet: Option<(&'a str, &'a str)>,
     /// The claims.
     pub claims: &'a Claims,
     /// What they came to.
@@ -102,6 +104,30 @@ pub fn shown(claim: &Claim, si: f64, system: System) -> String {
     if claim.verdict {
         return if si > 0.5 { "pass" } else { "fail" }.to_owned();
     }
+    let unit = unit_of(claim, system);
+    typeset::quantity(Decimal::nearest(si / unit.si().unwrap_or(1.0), 5), &unit)
+}
+
+/// What is claimed: with its own digits where it is written in the unit that is shown here, converted otherwise.
+pub fn claimed(claim: &Claim, system: System) -> String {
+    let unit = unit_of(claim, system);
+    let own = if unit.is_none() {
+        Decimal::parse(&claim.written)
+    } else {
+        let typed = parse_quantity(&claim.written).ok();
+        typed.and_then(|typed| match typed.terms.as_slice() {
+            [only] if only.unit == unit => Some(only.figure),
+            _ => None,
+        })
+    };
+    match own.filter(|_| !claim.verdict) {
+        Some(figure) => typeset::quantity(figure, &unit),
+        None => shown(claim, claim.claimed, system),
+    }
+}
+
+/// The unit that figures of a claim's kind are shown in.
+fn unit_of(claim: &Claim, system: System) -> Unit {
     let (force, length, small) = match system {
         System::Si => ("kN", "m", "mm"),
         System::Us => ("kip", "ft", "in"),
@@ -121,8 +147,7 @@ pub fn shown(claim: &Claim, si: f64, system: System) -> String {
         Ask::Allowable { .. } => &[small],
         Ask::Utilisation { .. } | Ask::Verdict { .. } => &[],
     };
-    let unit = Unit::of(atoms.iter().filter_map(|atom| Unit::known(atom)).map(|atom| (atom, 1)));
-    typeset::quantity(Decimal::nearest(si / unit.si().unwrap_or(1.0), 5), &unit)
+    Unit::of(atoms.iter().filter_map(|atom| Unit::known(atom)).map(|atom| (atom, 1)))
 }
 
 fn statement(review: &Reviewed<'_>) -> Vec<String> {
@@ -149,7 +174,8 @@ fn statement(review: &Reviewed<'_>) -> Vec<String> {
     ]
 }
 
-fn counts(compared: &[Compared]) -> String {
+/// How many claims agree and differ, in a sentence.
+pub fn counts(compared: &[Compared]) -> String {
     let of = |status: Status| compared.iter().filter(|found| found.status == status).count();
     let (agree, differ, none) = (of(Status::Agrees), of(Status::Differs), of(Status::NotComparable));
     let word = |count: usize, one: &str, many: &str| format!("{count} {}", if count == 1 { one } else { many });
@@ -187,10 +213,15 @@ fn claims_table(review: &Reviewed<'_>) -> Table {
             Status::Differs => "DIFFERS",
             Status::NotComparable => "not comparable",
         };
+        let words = match claim.reference.as_str() {
+            "" => claim.words.clone(),
+            _ if review.sheet.is_some() => claim.words.clone(),
+            reference => format!("{} ({reference})", claim.words),
+        };
         let cells = vec![
             Cell::text((claim.index + 1).to_string()),
-            Cell::text(claim.words.clone()),
-            Cell::text(shown(claim, claim.claimed, system)),
+            Cell::text(words),
+            Cell::text(claimed(claim, system)),
             Cell::text(figure(found.recomputed)),
             Cell::text(figure(difference)),
             Cell::text(percent),
@@ -300,8 +331,10 @@ fn dispositions(review: &Reviewed<'_>) -> Option<Table> {
 fn hashes(review: &Reviewed<'_>) -> Table {
     let columns = vec![Column::text("file").wide(36.0), Column::text("SHA-256").wide(84.0)];
     let mut table = Table::new("", "Hashes of claims and deck", columns);
-    for (name, text) in [(review.file, review.text), (review.claims.deck.as_str(), review.deck)] {
-        let hash = hexadecimal(&Sha256::digest(text.as_bytes()));
+    let of = |text: &str| hexadecimal(&Sha256::digest(text.as_bytes()));
+    let sheet = review.sheet.map(|(name, hash)| (name, hash.to_owned()));
+    let ours = [(review.file, of(review.text)), (review.claims.deck.as_str(), of(review.deck))];
+    for (name, hash) in sheet.into_iter().chain(ours) {
         let digits: Vec<char> = hash.chars().collect();
         let groups: Vec<String> = digits.chunks(8).map(|group| group.iter().collect()).collect();
         table.rows.push(Row::of(vec![Cell::text(name), Cell::text(groups.join(" "))]));

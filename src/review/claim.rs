@@ -46,7 +46,7 @@ pub struct Reviewer {
 pub struct Claim {
     /// Its place among the file's claims, from 0.
     pub index: usize,
-    /// What it answers; `None` where the reason why it has no answer stands in `reason`.
+    /// What it answers.
     pub question: Question,
     /// Whether the file says on which side of a jump it stands.
     pub sided: bool,
@@ -54,8 +54,10 @@ pub struct Claim {
     pub words: String,
     /// The figure in SI; a verdict is 1 or 0.
     pub claimed: f64,
-    /// As written.
+    /// As written; empty where it was taken from attached results.
     pub written: String,
+    /// Size of the unit it is written in, in SI; `None` for a verdict and for a length written in several units.
+    pub unit: Option<f64>,
     /// Half a unit of the last digit written, in SI; 0 for a verdict.
     pub half: f64,
     /// How far the recomputed figure may be from it and still agree, in SI.

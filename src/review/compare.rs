@@ -3,6 +3,7 @@
 use super::ask::{Along, Ask, Question, Side, evaluate};
 use super::claim::Claim;
 use super::search::Evidence;
+use super::slip::slip;
 use crate::analysis::Analysis;
 use crate::member::Member;
 
@@ -37,24 +38,11 @@ pub struct Compared {
     pub recomputed: Option<f64>,
     /// Claimed less recomputed, SI.
     pub difference: Option<f64>,
-    /// The same relative to the recomputed figure; `None` where that is zero.
+    /// The same relative to the recomputed figure; `None` where that is zero but for rounding, and for a verdict.
     pub relative: Option<f64>,
-    /// What strikes the eye: a truncation, a sign, a unit; or why it cannot be compared. May be empty.
+    /// What strikes the eye: a truncation, a sign, a unit, a decimal point; or why it cannot be compared. May be empty.
     pub remark: String,
 }
-
-/// Ratios that betray a unit, and what they would mean.
-const UNITS: [(f64, &str); 9] = [
-    (10.0, "a tenth or ten times: a decimal point, or cm against mm"),
-    (100.0, "a hundred times: m against cm"),
-    (1000.0, "a thousand times: kN against N, or m against mm"),
-    (4.448_221_615, "kip against kN, or lbf against N"),
-    (3.280_839_895, "ft against m"),
-    (25.4, "in against mm"),
-    (12.0, "ft against in"),
-    (1.355_817_948, "kip ft against kN m"),
-    (57.295_779_513, "degrees against radians"),
-];
 
 /// Compares a claim with the solved member.
 pub fn compare(claim: &Claim, member: &Member, analysis: &Analysis) -> Compared {
@@ -69,8 +57,14 @@ pub fn compare(claim: &Claim, member: &Member, analysis: &Analysis) -> Compared 
     // What is left of a figure that was only converted from its unit and back.
     let difference = if difference.abs() <= 1e-14 * value.abs() { 0.0 } else { difference };
     let agrees = difference.abs() <= claim.tolerance * (1.0 + 1e-9);
-    let relative = (value != 0.0 && !claim.verdict).then(|| difference / value);
-    let remark = if agrees { own_digits(claim, value) } else { slip(claim, value) };
+    // What is far below the last digit written is zero but for rounding, and nothing is relative to it.
+    let zero = value.abs() <= 1e-6 * claim.half.max(1e-9 * claim.claimed.abs());
+    let relative = (!zero && !claim.verdict).then(|| difference / value);
+    let remark = match agrees {
+        true => own_digits(claim, value),
+        false if zero => String::new(),
+        false => slip(claim, value),
+    };
     let status = if agrees { Status::Agrees } else { Status::Differs };
     Compared { status, recomputed: Some(value), difference: Some(difference), relative, remark }
 }
@@ -109,28 +103,6 @@ fn own_digits(claim: &Claim, value: f64) -> String {
         "agrees within its tolerance, not to its own digits: a rounded coefficient of a handbook, or figures rounded on the way"
             .to_owned()
     }
-}
-
-/// A difference that a sign or a unit would explain by itself.
-fn slip(claim: &Claim, value: f64) -> String {
-    if claim.verdict || value == 0.0 || claim.claimed == 0.0 {
-        return String::new();
-    }
-    let close = |figure: f64| (claim.claimed - figure).abs() <= claim.tolerance.max(0.002 * figure.abs());
-    if close(-value) {
-        return "would agree with the opposite sign".to_owned();
-    }
-    for (ratio, said) in UNITS {
-        for figure in [value * ratio, value / ratio] {
-            if close(figure) {
-                return format!("would agree if it were {said}");
-            }
-            if close(-figure) {
-                return format!("would agree with the opposite sign, if it were {said}");
-            }
-        }
-    }
-    String::new()
 }
 
 /// The claims that can be compared, as evidence for the search.

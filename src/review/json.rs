@@ -21,6 +21,7 @@ pub fn json(claims: &[Claim], compared: &[Compared], findings: &Findings) -> Val
                 "relative": found.relative,
                 "status": found.status.word(),
                 "remark": found.remark,
+                "reference": claim.reference,
             })
         })
         .collect();

@@ -2,14 +2,19 @@
 
 use std::fmt::Write;
 
+use super::read::MOST;
+use super::write::quoted;
 use crate::analysis::Analysis;
 use crate::member::{Measured, Member};
 
-/// The file; every value is empty, and an empty value is left out of a review.
+/// The file; every value is empty, and an empty value is left out of a review. No more is written than can be read.
 pub fn starter(member: &Member, analysis: &Analysis, deck: &str) -> String {
     let (year, month, day) = member.title.date;
-    let mut text = format!(
+    let text = format!(
         "# Claims to review: fill in the figures of the document under review; what stays empty is left out.\n\
+         # Signs: loads, deflections positive downward; slopes clockwise; reactions upward, reaction moments\n\
+         # counter-clockwise; bending moments sagging; V = dM/dx. The greatest deflection is the greatest downward.\n\
+         # A claim may have tolerance = \"1 %\"; else half a unit of its last digit or 0.5 %, the larger.\n\
          format = 1\n\
          deck = {}\n\
          blind = false                # true where you modelled without the originator's sheets\n\n\
@@ -25,30 +30,21 @@ pub fn starter(member: &Member, analysis: &Analysis, deck: &str) -> String {
         quoted(&member.title.revision),
         quoted(&member.title.subject),
     );
+    let mut list = List { text, count: 0 };
     for combination in &member.combinations {
         let name = combination.name.as_str();
-        for support in &member.supports {
-            if support.holds_deflection() {
-                claim(&mut text, "reaction", &support.name, name, &[]);
-            }
-            if support.holds_rotation() {
-                claim(&mut text, "reaction_moment", &support.name, name, &[]);
-            }
-        }
-        for redundant in &analysis.model.redundants {
-            claim(&mut text, "redundant", &redundant.name(member), name, &[]);
-        }
+        list.supports(member, analysis, ("combination", name));
         for station in &member.stations {
             let at = format!("{} m", station.exact());
             for quantity in ["shear", "moment", "slope", "deflection"] {
                 let side: &[(&str, &str)] = if quantity == "deflection" { &[] } else { &[("side", "right")] };
-                claim(&mut text, quantity, &at, name, side);
+                list.claim(quantity, &at, ("combination", name), side);
             }
         }
         for span in &member.spans {
             for quantity in ["shear", "moment", "deflection"] {
                 for extreme in ["max", "min"] {
-                    claim(&mut text, quantity, &span.name, name, &[("extreme", extreme)]);
+                    list.claim(quantity, &span.name, ("combination", name), &[("extreme", extreme)]);
                 }
             }
         }
@@ -60,35 +56,56 @@ pub fn starter(member: &Member, analysis: &Analysis, deck: &str) -> String {
             let (Some(combination), Some(span)) = (member.combinations.get(combination), member.spans.get(span)) else {
                 continue;
             };
+            let of = ("combination", combination.name.as_str());
             for quantity in ["allowable", "utilisation", "verdict"] {
-                claim(&mut text, quantity, &span.name, &combination.name, &[("limit", &limit.name)]);
+                list.claim(quantity, &span.name, of, &[("limit", &limit.name)]);
             }
             if limit.measured == Measured::Chord {
                 let more = [("extreme", "max"), ("measured", "chord")];
-                claim(&mut text, "deflection", &span.name, &combination.name, &more);
+                list.claim("deflection", &span.name, of, &more);
             }
         }
     }
-    text
-}
-
-fn claim(text: &mut String, quantity: &str, at: &str, combination: &str, more: &[(&str, &str)]) {
-    let _ = write!(text, "\n[[claim]]\nquantity = \"{quantity}\"\nat = {}\n", quoted(at));
-    for (key, value) in more {
-        let _ = writeln!(text, "{key} = {}", quoted(value));
+    for case in &member.cases {
+        list.supports(member, analysis, ("case", &case.name));
     }
-    let _ = write!(text, "combination = {}\nvalue = \"\"\nreference = \"\"\n", quoted(combination));
+    if list.count > MOST {
+        let _ =
+            write!(list.text, "\n# {} further figures are left out: so long a file is not read.\n", list.count - MOST);
+    }
+    list.text
 }
 
-/// A TOML string.
-fn quoted(text: &str) -> String {
-    let escaped: String = text
-        .chars()
-        .flat_map(|letter| match letter {
-            '"' | '\\' => vec!['\\', letter],
-            letter if letter.is_control() => format!("\\u{:04X}", u32::from(letter)).chars().collect(),
-            letter => vec![letter],
-        })
-        .collect();
-    format!("\"{escaped}\"")
+struct List {
+    text: String,
+    count: usize,
+}
+
+impl List {
+    /// Reactions and redundants of a load state.
+    fn supports(&mut self, member: &Member, analysis: &Analysis, of: (&str, &str)) {
+        for support in &member.supports {
+            if support.holds_deflection() {
+                self.claim("reaction", &support.name, of, &[]);
+            }
+            if support.holds_rotation() {
+                self.claim("reaction_moment", &support.name, of, &[]);
+            }
+        }
+        for redundant in &analysis.model.redundants {
+            self.claim("redundant", &redundant.name(member), of, &[]);
+        }
+    }
+
+    fn claim(&mut self, quantity: &str, at: &str, of: (&str, &str), more: &[(&str, &str)]) {
+        self.count += 1;
+        if self.count > MOST {
+            return;
+        }
+        let _ = write!(self.text, "\n[[claim]]\nquantity = \"{quantity}\"\nat = {}\n", quoted(at));
+        for (key, value) in more {
+            let _ = writeln!(self.text, "{key} = {}", quoted(value));
+        }
+        let _ = write!(self.text, "{} = {}\nvalue = \"\"\nreference = \"\"\n", of.0, quoted(of.1));
+    }
 }

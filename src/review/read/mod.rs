@@ -1,15 +1,23 @@
 //! Reading a file of claims: every fault with its place, all at once.
 
+mod asked;
 mod figure;
+
+use std::ops::Range;
 
 use toml::de::{DeTable, DeValue};
 
-use super::ask::{Along, Ask, Of, Question, Side};
+use super::ask::{Of, Question, Side};
 use super::claim::{Claim, Claims, Reviewed, Reviewer};
-use crate::deck::{LONGEST, Reader, Row, Value, clip, nearest};
+use crate::deck::{Reader, Row, Value};
 use crate::diagnostic::{Diagnostic, Severity};
-use crate::member::{Measured, Member, Place};
-use crate::quantity::parse_quantity;
+use crate::member::{Measured, Member};
+
+/// The longest file of claims that is read, in bytes.
+const LONGEST: usize = 8_000_000;
+
+/// The most claims that a file holds: every figure of a member of hundreds of spans.
+pub const MOST: usize = 20_000;
 
 /// What a claim may be of.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -39,11 +47,15 @@ const KINDS: [(&str, Kind); 10] = [
     ("verdict", Kind::Verdict),
 ];
 
-/// The name of the deck that a file of claims speaks of, as far as it can be read.
-pub fn deck_of(text: &str) -> Option<String> {
-    let (tree, _) = DeTable::parse_recoverable(text);
-    match tree.get_ref().get("deck")?.get_ref() {
-        DeValue::String(name) => Some(name.to_string()),
+/// The deck that a file of claims names, and the place of its name; `None` where it names none.
+pub fn deck_of(text: &str) -> Option<(String, Range<usize>)> {
+    if text.len() > LONGEST {
+        return None;
+    }
+    let (tree, errors) = DeTable::parse_recoverable(text);
+    let value = tree.get_ref().get("deck").filter(|_| errors.is_empty())?;
+    match value.get_ref() {
+        DeValue::String(name) if !name.trim().is_empty() => Some((name.to_string(), value.span())),
         _ => None,
     }
 }
@@ -53,9 +65,18 @@ pub fn deck_of(text: &str) -> Option<String> {
 /// # Errors
 /// Every fault of the file, each with its place; where the TOML itself is broken, that alone.
 pub fn read(text: &str, member: &Member) -> Result<(Claims, Vec<Diagnostic>), Vec<Diagnostic>> {
+    walk(text, Some(member))
+}
+
+/// The faults that can be told without the member, for a file whose deck cannot be used.
+pub fn faults(text: &str) -> Vec<Diagnostic> {
+    walk(text, None).err().unwrap_or_default()
+}
+
+fn walk(text: &str, member: Option<&Member>) -> Result<(Claims, Vec<Diagnostic>), Vec<Diagnostic>> {
     let whole = 0..text.len().min(1);
     if text.len() > LONGEST {
-        return Err(vec![Diagnostic::error(whole, "the file is longer than 2,000,000 bytes").hint("split it")]);
+        return Err(vec![Diagnostic::error(0..0, "the file is longer than 8,000,000 bytes").hint("split it")]);
     }
     let (tree, errors) = DeTable::parse_recoverable(text);
     if !errors.is_empty() {
@@ -74,9 +95,11 @@ pub fn read(text: &str, member: &Member) -> Result<(Claims, Vec<Diagnostic>), Ve
     if faults.is_empty() { Ok((build.claims, warnings)) } else { Err(faults) }
 }
 
+/// A file of claims being read.
 struct Build<'t, 'm> {
     reader: Reader<'t>,
-    member: &'m Member,
+    /// What names are looked up in; without it they are taken as they are.
+    member: Option<&'m Member>,
     claims: Claims,
 }
 
@@ -97,17 +120,20 @@ impl Build<'_, '_> {
         if items.is_empty() {
             self.reader.fault(value.span(), "nothing is claimed", "add [[claim]] with quantity, at and value");
         }
-        if items.len() > 5_000 {
-            self.reader.fault(value.span(), "more than 5,000 claims", "split the file");
+        if items.len() > MOST {
+            self.reader.fault(value.span(), "more than 20,000 claims", "split the file");
         }
-        for (index, item) in items.into_iter().enumerate().take(5_000) {
+        for (index, item) in items.into_iter().enumerate().take(MOST) {
             let Some(row) = self.reader.row(item, format!("claim {}", index + 1)) else { continue };
             if let Some(claim) = self.claim(index, &row) {
                 self.claims.claims.push(claim);
             }
         }
         if self.claims.empty > 0 {
-            let message = format!("{} claims have no value yet and are left out", self.claims.empty);
+            let message = match self.claims.empty {
+                1 => "1 claim has no value yet and is left out".to_owned(),
+                many => format!("{many} claims have no value yet and are left out"),
+            };
             self.reader.warn(value.span(), message, "");
         }
     }
@@ -170,39 +196,78 @@ impl Build<'_, '_> {
         let measured = row.table.get("measured").and_then(|value| self.reader.word(value, "measured", &words));
         let reference = self.reader.optional_text(row, "reference").unwrap_or_default();
         let limit = self.limit(row);
-        let kind = kind?;
+        let Some(kind) = kind else {
+            // Of what nobody knows is claimed, only that a figure is there can be asked.
+            self.reader.required(row, "value");
+            return None;
+        };
+        self.idle(kind, row);
         let ask = self.ask(kind, row, side.unwrap_or(Side::Left), measured.unwrap_or(Measured::Absolute), limit);
         let figure = self.figure(kind, row);
-        let (of, ask, figure) = (of?, ask?, figure?);
-        let figure::Figure { si, half, written } = figure;
-        if written.is_empty() {
+        let tolerance = self.tolerance(kind, row);
+        let (of, ask, figure, tolerance) = (of?, ask?, figure?, tolerance?);
+        if figure.written.is_empty() {
             self.claims.empty += 1;
             return None;
         }
-        let tolerance = self.tolerance(kind, row, si, half);
-        let name = match &of {
-            Of::Case(name) | Of::Combination(name) => name.clone(),
-        };
-        let at = self.text_of(row, "at");
-        let kind_word = KINDS.iter().find(|(_, known)| *known == kind).map_or("", |(word, _)| word).replace('_', " ");
-        let extreme = self.text_of(row, "extreme");
-        let words = [extreme.as_str(), &kind_word, if at.is_empty() { "" } else { "at" }, &at]
-            .into_iter()
-            .filter(|word| !word.is_empty())
-            .collect::<Vec<_>>()
-            .join(" ");
+        let tolerance = tolerance.of(&figure);
+        let figure::Figure { si, unit, half, written } = figure;
         Some(Claim {
             index,
+            words: self.words(kind, row, &of),
             question: Question { of, ask },
             sided: side.is_some(),
-            words: format!("{words}, {name}"),
             claimed: si,
             written,
+            unit,
             half,
-            tolerance: tolerance?,
+            tolerance,
             verdict: kind == Kind::Verdict,
             reference,
         })
+    }
+
+    /// Keys that say nothing about this kind of claim.
+    fn idle(&mut self, kind: Kind, row: &Row<'_>) {
+        let within = row.table.contains_key("extreme");
+        let along = matches!(kind, Kind::Moment | Kind::Shear | Kind::Deflection | Kind::Slope);
+        let limited = matches!(kind, Kind::Allowable | Kind::Utilisation | Kind::Verdict);
+        let useful = [
+            ("extreme", along),
+            ("side", along && !within && kind != Kind::Deflection),
+            ("measured", kind == Kind::Deflection),
+            ("limit", limited),
+        ];
+        for (key, of_use) in useful {
+            if let (Some(value), false) = (row.table.get(key), of_use) {
+                let message = format!("{key} says nothing about this claim and is left aside");
+                self.reader.warn(value.span(), message, "take it out, or mend what it was meant for");
+            }
+        }
+    }
+
+    /// The claim in words: `max moment at A-B, C1`.
+    fn words(&self, kind: Kind, row: &Row<'_>, of: &Of) -> String {
+        let (Of::Case(name) | Of::Combination(name)) = of;
+        let quantity = KINDS.iter().find(|(_, known)| *known == kind).map_or("", |(word, _)| word).replace('_', " ");
+        let along = matches!(kind, Kind::Moment | Kind::Shear | Kind::Deflection | Kind::Slope);
+        let text = |key: &str| self.text_of(row, key).split_whitespace().collect::<Vec<_>>().join(" ");
+        let extreme = if along { text("extreme") } else { String::new() };
+        let (at, side) = (text("at"), text("side"));
+        let place = match (at.as_str(), side.as_str()) {
+            ("", _) => String::new(),
+            (at, "left" | "right") if along && extreme.is_empty() && kind != Kind::Deflection => {
+                format!("{side} of {at}")
+            }
+            (at, _) => format!("at {at}"),
+        };
+        let chord = if kind == Kind::Deflection && text("measured") == "chord" { "from the chord" } else { "" };
+        let limit = text("limit");
+        let words = [extreme.as_str(), &quantity, &place, chord];
+        let words: Vec<&str> = words.into_iter().filter(|word| !word.is_empty()).collect();
+        let limited = !limit.is_empty() && matches!(kind, Kind::Allowable | Kind::Utilisation | Kind::Verdict);
+        let limit = if limited { format!(", limit {limit}") } else { String::new() };
+        format!("{}, {name}{limit}", words.join(" "))
     }
 
     fn text_of(&self, row: &Row<'_>, key: &str) -> String {
@@ -210,143 +275,5 @@ impl Build<'_, '_> {
             Some(DeValue::String(text)) => text.to_string(),
             _ => String::new(),
         }
-    }
-
-    fn of(&mut self, row: &Row<'_>) -> Option<Of> {
-        let (case, combination) = (row.table.get("case"), row.table.get("combination"));
-        match (case, combination) {
-            (Some(value), None) => {
-                let names = self.member.cases.iter().map(|case| case.name.clone()).collect();
-                self.named(value, "case", names).map(Of::Case)
-            }
-            (None, Some(value)) => {
-                let names = self.member.combinations.iter().map(|combination| combination.name.clone()).collect();
-                self.named(value, "combination", names).map(Of::Combination)
-            }
-            (Some(value), Some(_)) => {
-                self.reader.fault(
-                    value.span(),
-                    format!("{} names both a case and a combination", row.path),
-                    "one of them",
-                );
-                None
-            }
-            (None, None) => {
-                let hint = "add combination = \"NAME\" or case = \"NAME\"";
-                self.reader.fault(row.span.clone(), format!("{} names neither case nor combination", row.path), hint);
-                None
-            }
-        }
-    }
-
-    fn limit(&mut self, row: &Row<'_>) -> Option<String> {
-        let value = row.table.get("limit")?;
-        let names = self.member.limits.iter().map(|limit| limit.name.clone()).collect();
-        self.named(value, "limit", names)
-    }
-
-    fn named(&mut self, value: Value<'_>, what: &str, names: Vec<String>) -> Option<String> {
-        let name = self.reader.text(value, what)?;
-        if names.contains(&name) {
-            return Some(name);
-        }
-        let hint = match nearest(&name, names.iter().map(String::as_str)) {
-            Some(near) => format!("did you mean {near}?"),
-            None if names.is_empty() => format!("the deck names no {what}"),
-            None => format!("known: {}", names.join(", ")),
-        };
-        self.reader.fault(value.span(), format!("there is no {what} \"{}\"", clip(&name)), hint);
-        None
-    }
-
-    fn ask(&mut self, kind: Kind, row: &Row<'_>, side: Side, measured: Measured, limit: Option<String>) -> Option<Ask> {
-        let along = match kind {
-            Kind::Shear => Along::Shear,
-            Kind::Moment => Along::Moment,
-            Kind::Slope => Along::Slope,
-            _ => Along::Deflection,
-        };
-        match kind {
-            Kind::Reaction | Kind::ReactionMoment => {
-                let value = self.reader.required(row, "at")?;
-                let names = self.member.supports.iter().map(|support| support.name.clone()).collect();
-                let support = self.named(value, "support", names)?;
-                Some(if kind == Kind::Reaction { Ask::Reaction { support } } else { Ask::ReactionMoment { support } })
-            }
-            Kind::Redundant => {
-                let value = self.reader.required(row, "at")?;
-                let name = self.reader.text(value, "at")?;
-                let known = ["R.", "M."].iter().any(|letter| {
-                    name.strip_prefix(letter).is_some_and(|rest| self.member.supports.iter().any(|s| s.name == rest))
-                });
-                if known {
-                    return Some(Ask::Redundant { name });
-                }
-                let hint = "write R.B for a support's force, M.B for a moment";
-                self.reader.fault(value.span(), format!("\"{}\" names no redundant", clip(&name)), hint);
-                None
-            }
-            Kind::Moment | Kind::Shear | Kind::Deflection | Kind::Slope => self.along(along, row, side, measured),
-            Kind::Allowable | Kind::Utilisation => {
-                let value = self.reader.required(row, "at")?;
-                let span = self.span(value)?;
-                Some(if kind == Kind::Allowable {
-                    Ask::Allowable { span, limit }
-                } else {
-                    Ask::Utilisation { span, limit }
-                })
-            }
-            Kind::Verdict => {
-                let span = match row.table.get("at") {
-                    Some(value) => Some(self.span(value)?),
-                    None => None,
-                };
-                Some(Ask::Verdict { span, limit })
-            }
-        }
-    }
-
-    fn span(&mut self, value: Value<'_>) -> Option<String> {
-        let names = self.member.spans.iter().map(|span| span.name.clone()).collect();
-        self.named(value, "span", names)
-    }
-
-    /// A place: a support's name or a station; or an extreme within a span.
-    fn along(&mut self, along: Along, row: &Row<'_>, side: Side, measured: Measured) -> Option<Ask> {
-        let value = self.reader.required(row, "at")?;
-        let text = self.reader.text(value, "at")?;
-        let ends = [("max", true), ("min", false)];
-        if let Some(extreme) = row.table.get("extreme") {
-            let max = self.reader.word(extreme, "extreme", &ends)?;
-            return Some(Ask::Extreme { along, span: self.span(value)?, max, measured });
-        }
-        if self.member.spans.iter().any(|span| span.name == text) {
-            let message = format!("{} names a span without saying which extreme", row.path);
-            self.reader.fault(value.span(), message, "add extreme = \"max\" or extreme = \"min\"");
-            return None;
-        }
-        if let Some(support) = self.member.supports.iter().find(|support| support.name == text) {
-            return Some(Ask::Station { along, at: support.at, side, measured });
-        }
-        if text == "end" {
-            return Some(Ask::Station { along, at: self.member.end(), side, measured });
-        }
-        if parse_quantity(&text).is_err() {
-            let names = self.member.supports.iter().map(|s| s.name.as_str());
-            let names = names.chain(self.member.spans.iter().map(|span| span.name.as_str()));
-            let hint = match nearest(&text, names) {
-                Some(near) => format!("did you mean {near}?"),
-                None => "a support, a station as in \"2.5 m\", or a span as in \"A-B\"".to_owned(),
-            };
-            self.reader.fault(value.span(), format!("\"{}\" is no place on the member", clip(&text)), hint);
-            return None;
-        }
-        let (at, _) = self.reader.metres(value, "at")?;
-        if at < Place::ZERO || at > self.member.end() {
-            let message = format!("at lies off the member, which runs from 0 to {} m", self.member.end().exact());
-            self.reader.fault(value.span(), message, "places are measured from the member's left end");
-            return None;
-        }
-        Some(Ask::Station { along, at, side, measured })
     }
 }
