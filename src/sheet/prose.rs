@@ -72,7 +72,10 @@ pub fn short(text: &str, width: f64, size_pt: f64) -> String {
 }
 
 /// Words that stand for Greek letters.
-const GREEK: [(&str, &str); 14] = [
+const GREEK: [(&str, &str); 17] = [
+    ("rho", "ρ"),
+    ("tau", "τ"),
+    ("epsilon", "ε"),
     ("psi", "ψ"),
     ("phi", "φ"),
     ("theta", "θ"),

@@ -47,7 +47,7 @@ fn every_fault_has_its_place_and_its_mend() {
         ("value = \"1 kN\"", "value = \"1,5 kN\"", "12: value: a decimal comma"),
         ("value = \"1 kN\"", "value = \"nan kN\"", "12: value: a plain decimal number was expected"),
         ("value = \"1 kN\"", "valeu = \"1 kN\"", "12: "),
-        ("value = \"1 kN\"", "value = \"1 kN\"\ntolerance = \"1 m\"", "13: value: \"m\" is not a unit of force"),
+        ("value = \"1 kN\"", "value = \"1 kN\"\ntolerance = \"1 m\"", "13: tolerance: \"m\" is not a unit of force"),
         ("value = \"1 kN\"", "value = \"1 kN\"\ntolerance = \"-3 %\"", "13: a tolerance in % lies between 0 and 100"),
         ("value = \"1 kN\"", "value = \"1 kN\"\nside = \"up\"", "13: side cannot be \"up\""),
         (

@@ -90,9 +90,9 @@ fn signs_and_units_are_recognised_as_such() {
         one(DECK, &format!("quantity = \"reaction\"\nat = \"B\"\ncombination = \"S1\"\nvalue = \"{value}\"")).remark
     };
     assert_eq!(remark("-30.06 kN"), "would agree with the opposite sign");
-    assert!(remark("30.06 MN").contains("a thousand times"));
-    assert!(remark("6.757 kN").contains("kip against kN"));
-    assert!(remark("-30060 kN").contains("opposite sign"));
+    assert_eq!(remark("30.06 MN"), "would agree if the figure were in kN");
+    assert_eq!(remark("6.757 kN"), "would agree if the figure were in kip");
+    assert!(remark("-30060 kN").contains("opposite sign"), "{}", remark("-30060 kN"));
     assert_eq!(remark("33 kN"), "");
 }
 
@@ -114,7 +114,7 @@ fn published_misprints_differ() {
     let moment = "quantity = \"moment\"\nat = \"C-D\"\nextreme = \"max\"\ncombination = \"C\"\ntolerance = \"1 %\"";
     let misprint = one(FOUR, &format!("{moment}\nvalue = \"0.805 kN m\""));
     assert_eq!(misprint.status, Status::Differs);
-    assert!(misprint.remark.contains("a decimal point"), "{}", misprint.remark);
+    assert!(misprint.remark.contains("decimal point"), "{}", misprint.remark);
     assert_eq!(one(FOUR, &format!("{moment}\nvalue = \"0.0805 kN m\"")).status, Status::Agrees);
 }
 
