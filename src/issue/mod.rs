@@ -90,7 +90,7 @@ pub fn print(
 /// The text of every page of the same sheet, as [`sheet::text`] gives it.
 ///
 /// # Errors
-/// As [`print`].
+/// As [`print()`].
 pub fn text(
     calculation: &Calculation,
     working: &Working,

@@ -83,7 +83,7 @@ impl Beam {
                     400_000 + 1000 * dice.next(6000) as i64
                 };
                 // The general rule is a ratio to 9e6; a tenth of the members goes to 9e9.
-                let power = dice.next(if seed % 10 == 0 { 10 } else { 7 }) as i32;
+                let power = dice.next(if seed.is_multiple_of(10) { 10 } else { 7 }) as i32;
                 let digit = 1 + dice.next(9) as i64;
                 x += length;
                 // E is 200 GPa; I from 1e-9 to 9 times 1 m^4.

@@ -10,8 +10,11 @@ use crate::support::{deck, look, solve};
 
 use super::{CANTILEVER, FIXED, PROPPED, UNIFORM, couple, point, turn};
 
+/// Length, I, and where it tapers I at its right end and the law.
+pub type Segment<'a> = (f64, f64, Option<(f64, &'a str)>);
+
 /// A deck of segments that each run from one EI to another by a law; `None` for a prismatic one.
-pub fn tapered(segments: &[(f64, f64, Option<(f64, &str)>)], supports: &str, loads: &str) -> String {
+pub fn tapered(segments: &[Segment<'_>], supports: &str, loads: &str) -> String {
     let prismatic: Vec<(f64, f64)> = segments.iter().map(|(length, ei, _)| (*length, *ei)).collect();
     let mut text = deck(&prismatic, supports, loads, &[1.0]);
     for (index, (_, _, taper)) in segments.iter().enumerate() {
@@ -39,7 +42,7 @@ struct Constants {
     fem: [f64; 2],
 }
 
-fn constants(segments: &[(f64, f64, Option<(f64, &str)>)]) -> Constants {
+fn constants(segments: &[Segment<'_>]) -> Constants {
     let moments = |loads: &str| {
         let results = solve(&tapered(segments, FIXED, loads));
         [look(&results, "m A"), look(&results, "m B")]
@@ -50,7 +53,7 @@ fn constants(segments: &[(f64, f64, Option<(f64, &str)>)]) -> Constants {
 }
 
 /// A straight haunch of depth 1 + r over a at both ends, or at the left alone.
-fn straight(a: f64, r: f64, both: bool) -> Vec<(f64, f64, Option<(f64, &'static str)>)> {
+fn straight(a: f64, r: f64, both: bool) -> Vec<Segment<'static>> {
     let face = cube(1.0 + r);
     let middle = 1.0 - if both { 2.0 * a } else { a };
     let mut list = vec![(a, face, Some((1.0, "cubic")))];
@@ -108,7 +111,7 @@ fn straight_haunches() {
 }
 
 /// A parabolic haunch, its slope zero at the inner end, in short straight ones; from the face inwards.
-fn parabolic(a: f64, r: f64, parts: usize) -> Vec<(f64, f64, Option<(f64, &'static str)>)> {
+fn parabolic(a: f64, r: f64, parts: usize) -> Vec<Segment<'static>> {
     let depth = |part: usize| {
         let rest = 1.0 - part as f64 / parts as f64;
         1.0 + r * rest * rest
